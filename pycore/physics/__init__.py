@@ -1,0 +1,1 @@
+"""One published phenomenon a file. Imports numpy and the data tables, nothing above them."""
