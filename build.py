@@ -12,16 +12,16 @@ Needs Python 3.11 or newer and, the first time, a network. Everything it fetches
 checked by hash and kept in .venv, .cache and web/node_modules; nothing is done twice.
 """
 
-from __future__ import annotations
+import sys
+
+if sys.version_info < (3, 11):
+    sys.exit(f"Quenchwright needs Python 3.11 or newer to build; this is {sys.version.split()[0]}.")
 
 import argparse
 import json
 import os
-import sys
+import tomllib
 from pathlib import Path
-
-if sys.version_info < (3, 11):
-    sys.exit(f"Quenchwright needs Python 3.11 or newer to build; this is {sys.version.split()[0]}.")
 
 ROOT = Path(__file__).resolve().parent
 HELPERS = ROOT / "web" / "build"
@@ -34,9 +34,10 @@ import pack  # noqa: E402
 import parts  # noqa: E402
 from steps import CACHE, Steps, Stop, key_of, once, run, sha256  # noqa: E402
 
+CORE = ROOT / "pycore"
 DIST = ROOT / "dist"
 PAGE = DIST / "quenchwright.html"
-DEMO_JOB = ROOT / "pycore" / "data" / "demo_job.json"
+DEMO_JOB = CORE / "data" / "demo_job.json"
 DEMO_SHEET = DIST / "demo-sheet.html"
 LIMIT_MB = 12
 FROZEN = {"numpy", "jinja2", "markupsafe", "quenchwright"}
@@ -57,6 +58,7 @@ class Build:
         self.core_wheel()
         self.freeze()
         self.compile()
+        self.trim()
         self.page()
         self.demo()
 
@@ -84,9 +86,15 @@ class Build:
         self.steps.step("The core's wheel")
         version = core_version()
         self.core = self.work / f"quenchwright-{version}-py3-none-any.whl"
-        once(self.core, key_of(parts.sources(ROOT / "pycore"), HELPERS / "parts.py", version),
-             lambda out: out.write_bytes(parts.wheel(ROOT / "pycore", "quenchwright", version, core_requires())))
+        made_of = key_of(parts.sources(CORE), HELPERS / "parts.py", HELPERS / "compiled_templates.py", version)
+        once(self.core, made_of, lambda out: out.write_bytes(self.core_with_templates(version)))
         self.steps.note(f"{self.core.name}, sha256 {sha256(self.core)[:16]}…")
+
+    def core_with_templates(self, version: str) -> bytes:
+        """The package as it stands, and its templates as Python, which spares the page their compiling."""
+        said = run([fetch.PYTHON, HELPERS / "compiled_templates.py"], "The sheet's templates do not compile.")
+        templates = {f"sheet/{name}": source for name, source in json.loads(said).items()}
+        return parts.wheel(CORE, templates, "quenchwright", version, declared()["dependencies"])
 
     def freeze(self) -> None:
         self.steps.step("micropip resolves and freezes what the page needs")
@@ -102,7 +110,7 @@ class Build:
         self.steps.note(", ".join(f"{name} {entry['version']}" for name, entry in self.lock["packages"].items()))
 
     def compile(self) -> None:
-        self.steps.step("Compile to .pyc inside Pyodide, keep what is imported")
+        self.steps.step("Compile to .pyc inside Pyodide")
         stdlib = fetch.RUNTIME / "python_stdlib.zip"
         at = "/lib/python3.12/site-packages"
         self.compiled = {
@@ -112,19 +120,22 @@ class Build:
             "markupsafe": self.compile_zip(self.markupsafe, 2, at),
             "core": self.compile_zip(self.core, 0, at),
         }
+
+    def trim(self) -> None:
+        self.steps.step("A full run inside Pyodide, to keep only what it imports")
         self.exercised = self.work / "exercise.json"
         once(self.exercised, key_of(*self.compiled.values(), *HELPERS.glob("exercise.*"), fetch.WEB / "src" / "tree.js"),
              self.exercise_whole)
         modules = json.loads(self.exercised.read_text())["modules"]
-        self.steps.note(f"a full run imports {len(modules)} modules")
-        numpy_keep = parts.numpy_keeper(modules)
         self.library = {
             "stdlib": parts.trimmed_stdlib(self.compiled["stdlib"], modules),
-            "numpy": parts.tree(self.compiled["numpy"], numpy_keep),
+            "numpy": parts.tree(self.compiled["numpy"], parts.numpy_keeper(modules)),
             "jinja2": parts.tree(self.compiled["jinja2"]),
             "markupsafe": parts.tree(self.compiled["markupsafe"]),
             "core": parts.tree(self.compiled["core"]),
         }
+        kept = len(parts.names_in(self.library["stdlib"]))
+        self.steps.note(f"{len(modules)} modules imported; {kept} files of the standard library kept")
         folder = self.work / "parts"  # for the tests that run on exactly what the page holds
         once(folder, key_of(*map(sha256, self.library.values())), self.write_library)
 
@@ -159,10 +170,10 @@ class Build:
     def page(self) -> None:
         self.steps.step("The page in one file")
         data_file = self.work / "page.json"
-        once(data_file, key_of(parts.sources(ROOT / "pycore"), HELPERS / "page_data.py"),
+        once(data_file, key_of(parts.sources(CORE), HELPERS / "page_data.py"),
              lambda out: out.write_text(run([fetch.PYTHON, HELPERS / "page_data.py"], "The core does not run.")))
         data = json.loads(data_file.read_text())
-        script = self.bundle(fetch.WEB / "src" / "main.js")
+        script = self.bundle(fetch.WEB / "src" / "main.js", "page.js")
         embedded = self.embedded()
         blocks = {part.name: part.block for part in embedded}
         trees = ["numpy", "jinja2", "markupsafe", "core"]
@@ -185,19 +196,24 @@ class Build:
         if PAGE.stat().st_size > LIMIT_MB * 1_000_000:
             raise Stop(f"{PAGE.name} is larger than {LIMIT_MB} MB.")
 
-    def bundle(self, entry: Path) -> str:
+    def bundle(self, entry: Path, name: str) -> str:
         """A script and what it imports, bundled by esbuild into one classic script."""
-        target = self.work / "bundled" / entry.name
+        target = self.work / "bundled" / name
         scripts = [entry, *(fetch.WEB / "src").rglob("*.js"), fetch.WEB / "package-lock.json", HELPERS / "bundle.mjs"]
         once(target, key_of(scripts), lambda out: self.in_node(
             "bundle.mjs", entry, out, failed=f"esbuild could not bundle {entry.relative_to(ROOT)}."))
         return target.read_text().strip()
 
+    def worker_source(self, entry: Path, name: str) -> str:
+        """Pyodide's two scripts and a worker behind them: one script for one Blob."""
+        scripts = [drop_source_map((fetch.RUNTIME / file).read_text()) for file in ("pyodide.asm.js", "pyodide.js")]
+        return "\n".join([*scripts, self.bundle(entry, name)])
+
     def embedded(self) -> list[pack.Part]:
         """The parts in the order in which a start needs them: the worker comes up while the rest is unpacked."""
-        scripts = [drop_source_map((fetch.RUNTIME / name).read_text()) for name in ("pyodide.asm.js", "pyodide.js")]
-        worker = "\n".join([*scripts, self.bundle(fetch.WEB / "worker.js")]).encode()
-        return [pack.Part("worker", worker), pack.Part("wasm", (fetch.RUNTIME / "pyodide.asm.wasm").read_bytes()),
+        worker = self.worker_source(fetch.WEB / "worker.js", "worker.js")
+        return [pack.Part("worker", worker.encode()),
+                pack.Part("wasm", (fetch.RUNTIME / "pyodide.asm.wasm").read_bytes()),
                 *(pack.Part(name, content) for name, content in self.library.items())]
 
     def demo(self) -> None:
@@ -220,21 +236,16 @@ def drop_source_map(text: str) -> str:
 
 def core_version() -> str:
     """The version in pycore/__init__.py, which pyproject.toml must agree with."""
-    import tomllib
-
-    lines = (ROOT / "pycore" / "__init__.py").read_text().splitlines()
+    lines = (CORE / "__init__.py").read_text().splitlines()
     version = next(line for line in lines if line.startswith("__version__")).split('"')[1]
-    declared = tomllib.loads((ROOT / "pyproject.toml").read_text())["project"]["version"]
-    if version != declared:
-        raise Stop(f"pycore/__init__.py says version {version}, pyproject.toml says {declared}.")
+    if version != declared()["version"]:
+        raise Stop(f"pycore/__init__.py says version {version}, pyproject.toml says {declared()['version']}.")
     return version
 
 
-def core_requires() -> list[str]:
-    """What the core needs at run time, by pyproject.toml."""
-    import tomllib
-
-    return tomllib.loads((ROOT / "pyproject.toml").read_text())["project"]["dependencies"]
+def declared() -> dict:
+    """The project's own table in pyproject.toml."""
+    return tomllib.loads((ROOT / "pyproject.toml").read_text())["project"]
 
 
 def closure(frozen: dict, root: str) -> dict:
@@ -255,7 +266,7 @@ def main() -> int:
     options, rest = parser.parse_known_args()
     if rest and options.command != "test":
         parser.error(f"unknown arguments: {' '.join(rest)}")
-    os.environ.setdefault("PYTHONHASHSEED", "0")
+    os.environ["PYTHONHASHSEED"] = "0"  # whatever the helpers make must not depend on it
     try:
         build = Build(options.wheels, "build" if options.command == "build" else "test")
         build.everything()

@@ -264,7 +264,7 @@ def _steel(read, data):
             if amount is not None:
                 found[element] = amount
     if chemistry.get("C") in (None, ""):
-        read.fault("steel.chemistry.C", None, "the carbon of the certificate, 0.1 to 1.5 wt %")
+        read.fault("steel.chemistry.C", None, "the carbon of the certificate, 0.1 to 2 wt %")
     result["chemistry"] = found
     return result
 

@@ -26,7 +26,7 @@ TEMPERS = {"kitchen-oven": "kitchen oven", "toaster-oven": "toaster oven", "kiln
 COLDS = {"none": "none", "freezer": "household freezer", "dry-ice": "dry ice", "liquid-nitrogen": "liquid nitrogen"}
 AGITATIONS = {"still": "still", "moderate": "moved", "strong": "moved hard"}
 UNITS = {"mm": "mm", "in": "inches"}
-ELEMENTS = {"C": 1.5, "Mn": 2.5, "Si": 2.5, "Cr": 14.0, "Ni": 5.0, "Mo": 6.0, "V": 3.0, "W": 7.0, "Cu": 1.0,
+ELEMENTS = {"C": 2.0, "Mn": 2.5, "Si": 2.5, "Cr": 14.0, "Ni": 5.0, "Mo": 6.0, "V": 3.0, "W": 7.0, "Cu": 1.0,
             "P": 0.1, "S": 0.4, "Al": 0.2, "B": 0.01, "Co": 12.0, "Nb": 0.5, "Ti": 0.5, "N": 0.3}
 OTHER_SPELLINGS = {
     "oven": "kitchen-oven", "kitchen": "kitchen-oven", "domestic-oven": "kitchen-oven", "toaster": "toaster-oven",

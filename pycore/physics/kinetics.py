@@ -5,6 +5,9 @@ R_CAL = 1.987                 # cal/molK
 KV_RANGE = {"C": (0.1, 0.8), "Mn": (0.0, 2.0), "Si": (0.0, 1.0), "Ni": (0.0, 4.0), "Cr": (0.0, 2.0),
             "Mo": (0.0, 1.0)}
 EUTECTOID_C_PCT, FERRITE_C_PCT = 0.76, 0.02
+# In near-eutectoid steel what forms above about 500 °C is fine pearlite, not bainite (isothermal diagram of 1080, US
+# Steel atlas; from memory); the bainite speed there is counted as pearlite.
+NEAR_EUTECTOID_C_PCT, PEARLITE_DOWN_TO_C = 0.60, 500.0
 SEED = 1e-4                   # fraction from which growth is stepped; the time integral is finite down to zero
 
 
@@ -109,6 +112,8 @@ def decompose(time_s, temperature_C, composition, *, Ae3_C, Ae1_C, Bs_C, Ms_C, g
     plain = kirkaldy_venugopalan_1984_speeds(composition, middle, **limits)
     alloyed = li_1998_speeds(composition, middle, **limits)
     dF, dP, dB = (one ** (1 - weight) * other**weight * dt for one, other in zip(plain, alloyed))
+    if C >= NEAR_EUTECTOID_C_PCT:
+        dP, dB = dP + dB * (middle > PEARLITE_DOWN_TO_C), dB * (middle <= PEARLITE_DOWN_TO_C)
     power = 2 / 3 * (1 - weight) + 0.4 * weight
     late = max(0.0, sum(k * float(composition.get(e, 0.0)) for e, k in
                         (("C", 1.9), ("Mn", 2.5), ("Ni", 0.9), ("Cr", 1.7), ("Mo", 4.0))) - 2.6)

@@ -1,23 +1,31 @@
 """How large the type may be: the sheet's height is estimated before it is set.
 
-One page is the aim. The safe box of A4 and US Letter together is 254 mm high; the steps keep 11 pt
-where they fit and never go below 9.5 pt. The estimate uses the same widths the heat line uses.
+One page is the aim, on A4 and on US Letter alike. The steps keep 11 pt where they fit and never go below
+9.5 pt; the numbers on the heat line never below 32 pt. The widths are those of metrics.py.
 """
 import re
 
-from .metrics import POINT_MM, wrap
+from .heatline import draw_heat_line
+from .metrics import POINT_MM, count_lines, wrap
 
-PAGE_MM = (186, 254)
-SIZES = (("large", 11.5, 10), ("medium", 10.5, 9.5), ("small", 9.5, 9.5))
-LEADING = 1.22
+# Paper height less two margins of 10 mm and a little air.
+PAPERS = (("letter", 279.4 - 20 - 2), ("a4", 297 - 20 - 3))
+# Size classes of sheet.css: number, steps in pt, foot in pt, padding above and below a step in mm,
+# largest number on the heat line in pt. From 5 on, what the notes also hold is left out (see spare in sheet.css).
+SIZES = ((1, 11.5, 10, 1.0, 46), (2, 11, 10, 0.9, 42), (3, 10.5, 9.5, 0.8, 40), (4, 10, 9.5, 0.7, 38),
+         (5, 9.5, 9, 0.55, 34), (6, 9.5, 9, 0.4, 32))
+TWO_PAGES = 3                  # when nothing fits on one page, two pages in comfortable type
+TITLE_SIZES = ((28, 1), (24, 1), (20, 1), (17, 2), (14, 2), (12, 3))
+HEAD_MM, DO_MM, LOOK_MM, CARE_MM = 130, 62, 70, 119
+LEADING = 1.2
 
 
 def title_size(heading):
     """The largest size at which the title takes one line, or failing that two or three short ones."""
-    for size_pt, lines in ((28, 1), (24, 1), (20, 2), (16, 2), (13, 3)):
-        if len(wrap(heading, size_pt, 118, bold=True)) <= lines:
+    for size_pt, rows in TITLE_SIZES:
+        if len(wrap(heading, size_pt, HEAD_MM, bold=True)) <= rows:
             return size_pt
-    return 11
+    return TITLE_SIZES[-1][0]
 
 
 def plain(value):
@@ -26,37 +34,65 @@ def plain(value):
 
 
 def lines(text, size_pt, room_mm, bold=False):
-    return len(wrap(plain(text), size_pt, room_mm, bold))
+    return count_lines([(plain(text), bold)], size_pt, room_mm)
 
 
-def height_of(view, bench_pt, foot_pt):
-    """The sheet's height in mm at these sizes of type."""
-    bench, foot = bench_pt * POINT_MM * LEADING, foot_pt * POINT_MM * LEADING
-    summary = view["summary"]
-    total = 9 + view["title_pt"] * POINT_MM * 1.05 * lines(view["heading"], view["title_pt"], 118, True)
-    total += foot * (lines(f"{summary['steel']} · {summary['part']}", 10.5, 118) + lines(summary["shop"], 10.5, 118))
+def height_of(view, size, line_mm):
+    """The sheet's height in mm at a size class, its parts in the order of the template."""
+    number, bench_pt, foot_pt, pad, _ = size
+    bench, foot, dense = bench_pt * POINT_MM * LEADING, foot_pt * POINT_MM * LEADING, number >= 5
+    title = view["title_pt"]
+    total = title * POINT_MM * 1.05 * lines(view["heading"], title, HEAD_MM, True) + 1
+    total += 4.25 * lines(f"{view['summary']['steel']} · {view['summary']['part']}", 10, HEAD_MM)
     if view["framed"]:
-        total += 7 + foot * sum(lines(row, foot_pt, 170) for row in view["reasons"])
-        total += foot * sum(lines(f"{row['what']} {row['gives']}", foot_pt, 165) for row in view["alternatives"])
-    picture = re.search(r'viewBox="0 0 [\d.]+ ([\d.]+)"', str(view["heat_line"]))
-    total += float(picture.group(1)) + 3 if picture else 0
-    total += 5
+        total = max(total, 19.5) + 2.5 + 6 + foot * lines("  ".join([view["verdict_word"] + "xx"] + view["reasons"]), foot_pt, 178)
+        total += foot * sum(lines(f"– {row['what']} Gives {row['gives']}.", foot_pt, 172, True) for row in view["alternatives"])
+    else:
+        total = max(total + 4.25 * lines(" ".join(view["reasons"]), 10, HEAD_MM), 19.5) + 2.5
+    total += line_mm + 2 + 1 + (0.5 if dense else 4.6)
     for step in view["steps"]:
-        do = lines(step["do"] + ("  stop and check" if step["hold"] else ""), bench_pt + 0.5, 58, True)
-        do += lines(" · ".join(part for part in (step["at_text"], step["time_text"]) if part), bench_pt - 0.5, 58)
-        total += max(9, bench * max(do, lines(step["look"], bench_pt, 70))) + 2
-    left = 5 + 31 + 4 * foot * 1.1 + sum(foot * lines(row["text"], foot_pt, 36) for row in view["facts"])
-    right = 5 + sum(foot * lines(f"WARNING  {row['text']} {row['because']}", foot_pt, 116) + 1.2 for row in view["cautions"])
-    total += max(left, right) + 4
+        at = " · ".join(part for part in (step["at_text"], step["time_text"]) if part)
+        runs = [(step["do"] + (" stop and check" if step["hold"] else ""), True)]
+        if dense:
+            do = count_lines(runs + [(at, False)], bench_pt, DO_MM)
+        else:
+            do = count_lines(runs, bench_pt, DO_MM) + lines(at, bench_pt, DO_MM)
+        look = lines(step["look"] + (" ▲" + " B" * len(step["cautions"]) if step["cautions"] else ""), bench_pt, LOOK_MM)
+        total += max(8, bench * max(do, look)) + 2 * pad + (0.4 if step["hold"] else 0.2)
+    left = (4.9 if number < 6 else 0) + 26 + 4 + 3 * foot
+    right = (4.9 if number < 6 else 0) + sum(
+        count_lines([(row["signal"].upper(), True), (f"{row['text']} {row['because']}", False)], foot_pt, CARE_MM) * foot + 0.6
+        for row in view["cautions"])
+    total += max(left, right) + 1.8
+    total += 1 + foot * lines("    ".join(f"{row['name']} {plain(row['text'])}" for row in view["facts"]
+                                          if not (row["spare"] and dense)), foot_pt, 178, True)
     if view["faults"]:
-        room = 186 / len(view["faults"]) - 4
-        total += 2 + foot + foot * max(lines(f"{row['cause']} {row['then']}", foot_pt, room) for row in view["faults"])
-    return total + 14 + 6
+        room = (186 - 4 * (len(view["faults"]) - 1)) / len(view["faults"])
+        total += 2.2 + foot + foot * max(
+            lines(row["then"] if dense and row["then"] else f"{row['cause']} {row['then']}", foot_pt, room) for row in view["faults"])
+    return total + 10 + 1.2 + 3.6 * (2 if view["marked"] or view["missing"] else 1)
 
 
-def choose_size(view):
-    """The name of the largest size class that keeps the sheet on one page; the smallest if none does."""
-    for name, bench_pt, foot_pt in SIZES:
-        if height_of(view, bench_pt, foot_pt) <= PAGE_MM[1]:
-            return name
-    return SIZES[-1][0]
+def fit(plan, view, link_to):
+    """Sets view["heat_line"] and, for each paper, the largest size class that keeps the sheet on one page."""
+    drawn = {}
+
+    def line(largest_pt):
+        if largest_pt not in drawn:
+            drawn[largest_pt] = draw_heat_line(plan, link_to, largest_pt)
+        return drawn[largest_pt]
+
+    line(SIZES[-1][-1])                    # notes which numbers on the line are marked, for the legend
+    view["marked"] = view["marked"]()
+    chosen = None
+    for paper, room_mm in PAPERS:
+        for size in SIZES:
+            # The line is drawn once, for the smaller paper; the larger one only gets larger text.
+            picture, line_mm = chosen or line(size[-1])
+            if height_of(view, size, line_mm) <= room_mm:
+                break
+        else:
+            size = SIZES[TWO_PAGES - 1] if paper == "letter" else size
+        view[paper] = size[0]
+        chosen = chosen or line(size[-1])
+    view["heat_line"] = chosen[0]

@@ -7,79 +7,87 @@ nothing can overlap; the numbers are as large as the paper then allows. Not to s
 from markupsafe import Markup
 
 from . import svg
-from .metrics import CAP_HEIGHT, POINT_MM, shorten, width_mm
-from .words import clean, is_number, both_units
+from .metrics import CAP_HEIGHT, POINT_MM, shorten, width_mm, wrap
+from .words import NOT_COMPUTED, both_units, clean, is_number
 
 WIDTH_MM = 186
 LARGEST_PT, WALL_PT = 46, 32      # critical numbers: at least 32 pt, read from two metres
-LABEL_PT, NOTE_PT = 9.5, 9.5
-LABEL_ROOM_MM = 33                # a label longer than this is cut short; the step below has it in full
+SMALL_PT = 9.5                    # labels and notes
+ROW_MM = 4.1                      # from one small row to the next
+ROOM_MM = 34                      # a longer label or note is broken into rows
+ON_LINE, OVER_NUMBER, LABEL_CAP = 1.9, 1.7, 2.6
 STANDING = ("austenitize", "quench", "temper", "cold")
 
 
 class Block:
-    """The text of one station, measured: label above, number, and beside it unit over second line."""
+    """The text of one station, measured: label, number, unit and second line beside it, small rows under it."""
 
-    def __init__(self, station, size_pt, beside, note_beside=False):
+    def __init__(self, station, size_pt, beside=(), aside=False):
+        """`beside`: which of "other", "note" stands beside the number, under the unit; `aside`: the label too."""
         self.station = station
         self.key = station["key"]
-        value = station["value"]
-        worded = not any(char.isdigit() for char in value)
+        worded = not any(char.isdigit() for char in station["value"])
         self.size_pt = size_pt * 0.55 if worded else size_pt
-        self.unit_pt = max(8.5, size_pt * 0.36)
-        self.second_pt = max(8.5, size_pt * 0.29)
-        self.second = (station["note"] if note_beside else station["other"]) if beside else ""
-        self.second = shorten(self.second, self.second_pt, 24)
-        under = [] if note_beside and beside else [station["note"]]
-        if not beside and not note_beside:
-            under.insert(0, station["other"])
-        self.under = " · ".join(part for part in under if part)
-        self.value = ("~" if station["outside"] else "") + value
-        self.value = shorten(self.value, self.size_pt, 60, bold=True)
+        self.unit_pt = max(9, size_pt * 0.36)
+        self.value = shorten(("~" if station["outside"] else "") + station["value"], self.size_pt, 62, bold=True)
         self.number_mm = width_mm(self.value, self.size_pt, bold=True)
-        self.gap_mm = size_pt * 0.035 if station["unit"] or self.second else 0
-        self.stack_mm = max(width_mm(station["unit"], self.unit_pt, bold=True),
-                            width_mm(self.second, self.second_pt))
         self.cap_mm = size_pt * POINT_MM * CAP_HEIGHT
-        self.step = f"{station['order']} " if station["order"] is not None else ""
-        step_mm = width_mm(self.step, LABEL_PT, bold=True)
-        self.label = shorten(station["label"], LABEL_PT, LABEL_ROOM_MM - step_mm)
-        self.under = shorten(self.under, NOTE_PT, LABEL_ROOM_MM)
-        self.width_mm = max(self.number_mm + self.gap_mm + self.stack_mm,
-                            step_mm + width_mm(self.label, LABEL_PT), width_mm(self.under, NOTE_PT))
+        self.step = f"{station['order']} " if station["order"] else ""
+        step_mm = width_mm(self.step, SMALL_PT, bold=True)
+        self.label = shorten(station["label"], SMALL_PT, ROOM_MM - step_mm)
+        label_mm = step_mm + width_mm(self.label, SMALL_PT)
+        self.aside = aside
+        self.second = " · ".join(station[name] for name in beside if station[name])
+        self.second = shorten(self.second, SMALL_PT, 26)
+        unit_mm = width_mm(station["unit"], self.unit_pt, bold=True)
+        self.gap_mm = 0.5 + size_pt * 0.02 if station["unit"] or self.second else 0
+        if aside:
+            self.unit_mm = unit_mm + 2
+            core = self.number_mm + self.gap_mm + self.unit_mm + max(label_mm, width_mm(self.second, SMALL_PT))
+        else:
+            core = max(self.number_mm + self.gap_mm + max(unit_mm, width_mm(self.second, SMALL_PT)), label_mm)
+        self.rows = rows_within([station[name] for name in ("other", "note") if station[name] and name not in beside], core)
+        self.width_mm = max([core] + [width_mm(row, SMALL_PT) for row in self.rows])
 
     @property
     def height_mm(self):
-        """From the line to the far edge of the text, without the row under the line."""
-        return 1.9 + self.cap_mm + 1.7 + 2.7
+        """From the line to the far edge of the block, without its small rows."""
+        return ON_LINE + self.cap_mm + (0 if self.aside else OVER_NUMBER + LABEL_CAP)
 
-    def draw(self, x, label_y, number_y):
-        """The block with the given baselines of its label and its number."""
-        parts = []
-        if self.step or self.label:
-            parts.append(svg.element(
-                "text", svg.element("tspan", Markup.escape(self.step), font_weight="700"), Markup.escape(self.label),
-                x=x, y=label_y, font_size=svg.mm(LABEL_PT * POINT_MM), class_="label"))
-        parts.append(svg.text(x, number_y, self.value, self.size_pt, "number", bold=True))
+    def draw(self, x, number_y):
+        """The block with its number on the baseline `number_y`."""
+        top = number_y - self.cap_mm
+        parts = [svg.text(x, number_y, self.value, self.size_pt, "number", bold=True)]
         side = x + self.number_mm + self.gap_mm
         unit = self.station["unit"]
-        if unit and self.second:
-            top = number_y - self.size_pt * POINT_MM * CAP_HEIGHT
+        label_x, label_y = x, top - OVER_NUMBER
+        if self.aside:
+            parts.append(svg.text(side, number_y, unit, self.unit_pt, "unit", bold=True))
+            label_x = side = side + self.unit_mm
+            label_y = number_y - ROW_MM if self.second else number_y
+        elif unit and self.second:
             parts.append(svg.text(side, top + self.unit_pt * POINT_MM * CAP_HEIGHT, unit, self.unit_pt, "unit", bold=True))
         elif unit:
             parts.append(svg.text(side, number_y, unit, self.unit_pt, "unit", bold=True))
         if self.second:
-            parts.append(svg.text(side, number_y, self.second, self.second_pt, "second"))
+            parts.append(svg.text(side, number_y, self.second, SMALL_PT, "second"))
+        if self.step or self.label:
+            parts.append(svg.element(
+                "text", svg.element("tspan", Markup.escape(self.step), font_weight="700"), Markup.escape(self.label),
+                x=label_x, y=label_y, font_size=svg.mm(SMALL_PT * POINT_MM), class_="label"))
         return svg.link(self.key, *parts)
 
-    def stand(self, x, line_y):
-        number_y = line_y - 1.9
-        return self.draw(x, number_y - self.cap_mm - 1.7, number_y)
 
-    def hang(self, x, line_y, rows=0):
-        """Under the line, below `rows` rows of small text already there."""
-        label_y = line_y + 4.3 + 4.3 * rows
-        return self.draw(x, label_y, label_y + 1.7 + self.cap_mm)
+def rows_within(parts, room_mm):
+    """Short texts set side by side where the room allows, else one under the other; long ones broken."""
+    rows = []
+    for part in parts:
+        joined = f"{rows[-1]} · {part}" if rows else part
+        if rows and width_mm(joined, SMALL_PT) <= room_mm:
+            rows[-1] = joined
+        else:
+            rows += wrap(part, SMALL_PT, max(room_mm, min(ROOM_MM, 24)))[:2]
+    return rows[:3]
 
 
 class Column:
@@ -88,17 +96,13 @@ class Column:
     def __init__(self, kind, temperature_C):
         self.kind, self.temperature_C = kind, temperature_C
         self.standing = self.hanging = self.above = None    # above: the transfer, high in the valley
-        self.rows = []                                      # small lines of text under the line
+        self.checks = []                                    # stop marks with a few words, under the line
         self.again = 0                                      # further tempers at the same heat
 
     @property
     def width_mm(self):
         widths = [block.width_mm for block in (self.standing, self.hanging, self.above) if block]
-        return max(widths + [width_mm(row, NOTE_PT) + (4 if mark else 0) for row, mark in self.rows] + [6])
-
-    def all_rows(self):
-        under = self.standing.under if self.standing else ""
-        return ([(under, False)] if under else []) + self.rows
+        return max(widths + [4 + width_mm(words, SMALL_PT, bold=True) for words in self.checks] + [6])
 
 
 def stations_of(plan, link_to):
@@ -108,9 +112,9 @@ def stations_of(plan, link_to):
         why = raw.get("why")
         key, outside = link_to(why)
         value = clean(raw.get("value"))
-        found.append({"id": clean(raw.get("id")), "label": clean(raw.get("label")), "value": value or "not computed",
+        found.append({"id": clean(raw.get("id")), "label": clean(raw.get("label")), "value": value or NOT_COMPUTED,
                       "unit": clean(raw.get("unit")) if value else "", "other": clean(raw.get("other")),
-                      "note": clean(raw.get("note")), "order": raw.get("order"), "key": key, "outside": outside,
+                      "note": clean(raw.get("note")), "order": clean(raw.get("order")), "key": key, "outside": outside,
                       "temperature_C": raw.get("temperature_C") if is_number(raw.get("temperature_C")) else None})
     return found
 
@@ -120,17 +124,20 @@ def cycles_of(plan):
     return max(1, min(4, int(cycles))) if is_number(cycles) else 1
 
 
-def columns_of(plan, stations, big_pt, small_pt, beside):
-    """The stations gathered into stretches of line, at the given sizes of type."""
-    critical = set(plan.get("critical") or [])
+def columns_of(plan, stations, big_pt, small_pt, mode):
+    """The stations gathered into stretches of line. `mode`: "wide", "middle" or "narrow": how much of the
+    small text may stand beside the numbers."""
+    critical = set(name for name in plan.get("critical") or [] if isinstance(name, str))
     columns, hot, temper = [], None, None
     several_tempers = sum(s["id"].rstrip("0123456789") == "temper" for s in stations) > 1
     for station in stations:
         kind = station["id"].rstrip("0123456789")
         size_pt = big_pt if station["id"] in critical else small_pt
         temperature = station["temperature_C"]
-        timed = kind in ("soak", "transfer", "hold")
-        block = Block(station, size_pt, beside or timed, note_beside=timed)
+        beside = {"wide": ("other",), "middle": (), "narrow": ()}[mode]
+        if kind in ("soak", "hold", "transfer"):
+            beside = () if mode == "narrow" else ("note",)
+        block = Block(station, size_pt, beside, aside=kind in ("transfer", "hold") and mode != "narrow")
         last = columns[-1] if columns else None
         if kind == "soak" and hot and not hot.hanging:
             hot.hanging = block
@@ -140,14 +147,13 @@ def columns_of(plan, stations, big_pt, small_pt, beside):
             if not last or last.kind != "valley":
                 last = Column("valley", 20)
                 columns.append(last)
-            if kind == "transfer":
+            if kind == "transfer" and not last.above:
                 last.above = block
-            else:
+            elif not last.standing:
                 last.standing = block
         elif kind in ("check", "out") and last and last.kind == "valley":
-            words = " ".join(part for part in (station["value"] if station["value"] != "not computed" else station["label"],
-                                               station["unit"]) if part)
-            last.rows.append((shorten(f"{block.step}{words}", NOTE_PT, LABEL_ROOM_MM), kind == "check"))
+            words = station["label"] if station["value"] == NOT_COMPUTED else f"{station['value']} {station['unit']}".strip()
+            last.checks.append(shorten(f"{block.step}{words}", SMALL_PT, ROOM_MM, bold=True))
         else:
             if temperature is None:
                 temperature = last.temperature_C if last else 20
@@ -155,7 +161,7 @@ def columns_of(plan, stations, big_pt, small_pt, beside):
             if kind in STANDING:
                 column.standing = block
             else:
-                column.hanging = Block(station, size_pt, False) if kind == "preheat" else block
+                column.hanging = block
             if kind == "austenitize":
                 hot = column
             if kind == "temper":
@@ -185,53 +191,57 @@ def slopes_of(columns, first_mm):
     return slopes, 4 + 11 * again
 
 
-def arrange(plan, stations, magnet_mm):
+def arrange(plan, stations, magnet_mm, largest_pt):
     """The largest type at which all stretches fit side by side."""
-    for big_pt, small_pt, beside in (
-            [(size, 18, True) for size in range(LARGEST_PT, 35, -1)]
-            + [(size, 16, False) for size in range(42, WALL_PT + 1, -1)]
-            + [(WALL_PT, size, False) for size in (15, 14, 13, 12, 11, 10)]
-            + [(size, 10, False) for size in range(WALL_PT - 2, 10, -2)]):
-        columns = columns_of(plan, stations, big_pt, small_pt, beside)
-        first = 6
-        ramp = sum(column.width_mm + 4 for column in columns[:_before_hot(columns)])
-        first = max(first, magnet_mm + 2 - ramp)
-        slopes, end = slopes_of(columns, first)
+    choices = [(size, 17, mode) for size in range(largest_pt, WALL_PT - 1, -1) for mode in ("wide", "middle", "narrow")]
+    choices += [(WALL_PT, size, "narrow") for size in (15, 13, 11, 10)]
+    choices += [(size, 10, "narrow") for size in range(WALL_PT - 2, 8, -2)]
+    for big_pt, small_pt, mode in choices:
+        columns = columns_of(plan, stations, big_pt, small_pt, mode)
+        hot = next((index for index, column in enumerate(columns) if column.kind == "austenitize"), 0)
+        ramp = sum(column.width_mm + 4 for column in columns[:hot])
+        slopes, end = slopes_of(columns, max(6, (magnet_mm + 2 - ramp) / 0.9))
         spare = WIDTH_MM - sum(column.width_mm for column in columns) - sum(slopes) - end
         if spare >= 0:
             break
     return columns, slopes, end, max(0, spare), big_pt
 
 
-def _before_hot(columns):
-    for index, column in enumerate(columns):
-        if column.kind == "austenitize":
-            return index
-    return 0
+def slope_path(points):
+    return "C" + " ".join(f"{svg.mm(x)} {svg.mm(y)}" for x, y in points[1:])
 
 
-def curve(x1, y1, x2, y2):
-    """A slope drawn as heat moves: level, then steep, then level."""
+def slope(x1, y1, x2, y2):
+    """A change of temperature: level, then steep, then level, as a Bézier's four points."""
     half = (x2 - x1) / 2
-    return f"C{svg.mm(x1 + half)} {svg.mm(y1)} {svg.mm(x2 - half)} {svg.mm(y2)} {svg.mm(x2)} {svg.mm(y2)}"
+    return (x1, y1), (x1 + half, y1), (x2 - half, y2), (x2, y2)
 
 
-def draw_heat_line(plan, link_to):
-    """The whole picture as SVG; `link_to(key)` gives (address of the note or None, outside its range)."""
+def first_slope(x1, y1, x2, y2):
+    """The first heat: slow to start, level only at the very end."""
+    return (x1, y1), (x1 + (x2 - x1) * 0.7, y1), (x2 - (x2 - x1) * 0.22, y2), (x2, y2)
+
+
+def draw_heat_line(plan, link_to, largest_pt=LARGEST_PT):
+    """The whole picture as SVG, and its height in mm; `link_to(key)` gives the address of a number's note
+    (or None) and whether it is marked."""
     stations = stations_of(plan, link_to)
-    magnet = (plan.get("austenitize") or {}).get("magnet_lets_go_C")
-    magnet_words = ("magnet lets go", both_units(magnet)) if is_number(magnet) else None
-    magnet_mm = max(width_mm(words, LABEL_PT) for words in magnet_words) if magnet_words else 0
     if not stations:
-        return Markup("")
-    columns, slopes, end, spare, big_pt = arrange(plan, stations, magnet_mm)
+        return Markup(""), 0
+    heat = plan.get("austenitize") if isinstance(plan.get("austenitize"), dict) else {}
+    magnet = heat.get("magnet_lets_go_C")
+    magnet_words = ("magnet lets go", both_units(magnet)) if is_number(magnet) else None
+    magnet_mm = max(width_mm(words, SMALL_PT) for words in magnet_words) if magnet_words else 0
+    columns, slopes, end, spare, big_pt = arrange(plan, stations, magnet_mm, largest_pt)
 
-    cap = big_pt * POINT_MM * CAP_HEIGHT
-    block = 1.9 + cap + 1.7 + 2.7
     hot_C = max([column.temperature_C for column in columns] + [100])
-    valley = any(column.above for column in columns)
-    top = block + 0.6
-    drop = 2 * block + 2.2 if valley else block + 12
+    top = max([column.standing.height_mm for column in columns if column.standing and column.kind != "valley"] + [10]) + 0.5
+    drop = 22
+    for column in columns:
+        if column.kind == "valley":
+            above, standing = column.above, column.standing
+            need = (above.height_mm + len(above.rows) * ROW_MM if above else 0) + (standing.height_mm if standing else 0) + 2.5
+            drop = max(drop, need)
     floor = top + drop
 
     def level(temperature_C):
@@ -239,99 +249,111 @@ def draw_heat_line(plan, link_to):
             return floor + (4.5 if temperature_C < 0 else 0)
         return min(floor - 7, floor - drop * (temperature_C - 20) / (hot_C - 20))
 
-    # Spare width: mostly to the slopes (not to the fall, which must look sudden), the rest to the stretches.
+    # Spare width goes to the slopes (not to the fall, which must look sudden) and to the stretches.
     soft = [index for index, column in enumerate(columns) if column.kind != "valley"]
-    wider = spare * 0.6 / max(1, len(soft) + 1)
-    slopes = [slope + (wider if index in soft else 0) for index, slope in enumerate(slopes)]
-    stretch = spare * 0.4 / max(1, len(columns))
+    wider = spare * 0.55 / (len(soft) + 1)
+    slopes = [width + (wider if index in soft else 0) for index, width in enumerate(slopes)]
+    stretch = spare * 0.45 / len(columns)
 
     path, marks, blocks = [f"M0 {svg.mm(floor)}"], [], []
-    x, y, bottom = 0.0, floor, floor
-    crossing = None
-    for index, (column, slope) in enumerate(zip(columns, slopes)):
+    x, y, bottom, crossing = 0.0, floor, floor, None
+    for index, (column, width) in enumerate(zip(columns, slopes)):
         before = columns[index - 1] if index else None
-        start = x
         if before is not None and before.kind == "temper":
+            start = x
             x, y = repeat(path, before, x, y, floor)
-            slope -= x - start
+            width -= x - start
         target = level(column.temperature_C)
-        if magnet_words and crossing is None and target < level(magnet) <= y and column.temperature_C > magnet:
-            crossing = cross(x, y, x + slope, target, level(magnet))
         if column.kind == "valley":
-            path.append(f"L{svg.mm(x + slope * 0.75)} {svg.mm(target)}")
+            path.append(f"L{svg.mm(x + width * 0.7)} {svg.mm(target)}")
         elif before is not None and before.kind == "temper" and y < floor:
-            # between two tempers the work cools to hand-warm
-            path.append(curve(x, y, x + slope / 2, floor))
-            path.append(curve(x + slope / 2, floor, x + slope, target))
+            path.append(slope_path(slope(x, y, x + width / 2, floor)))       # between tempers: down to hand-warm
+            path.append(slope_path(slope(x + width / 2, floor, x + width, target)))
         else:
-            path.append(curve(x, y, x + slope, target))
-        x, y = x + slope, target
-        width = column.width_mm + stretch
-        path.append(f"H{svg.mm(x + width)}")
-        if column.standing:
-            blocks.append(column.standing.stand(x, y))
-        if column.above:
-            blocks.append(column.above.draw(x, top + 2.7 - 0.4, top + 2.7 - 0.4 + 1.7 + column.above.cap_mm))
-        rows = column.all_rows()
-        for number, (words, mark) in enumerate(rows):
-            row_y = y + 4.3 + 4.3 * number
-            if mark:
-                marks.append(stop_mark(x + 1.4, row_y - 1.15))
-            blocks.append(svg.text(x + (4 if mark else 0), row_y, words, NOTE_PT, "note", bold=mark))
-            bottom = max(bottom, row_y + 1)
-        if column.hanging:
-            blocks.append(column.hanging.hang(x, y, len(rows)))
-            hung = y + 4.3 + 4.3 * len(rows) + 1.7 + column.hanging.cap_mm
-            if column.hanging.under:
-                blocks.append(svg.text(x, hung + 4.2, column.hanging.under, NOTE_PT, "note"))
-                hung += 4.2
-            bottom = max(bottom, hung + 0.8)
-        bottom = max(bottom, y)
-        x += width
+            points = (first_slope if before is None else slope)(x, y, x + width, target)
+            path.append(slope_path(points))
+            if magnet_words and crossing is None and target < level(magnet) <= y:
+                crossing = cross(points, level(magnet))
+        x, y = x + width, target
+        path.append(f"H{svg.mm(x + column.width_mm + stretch)}")
+        bottom = max(bottom, y, draw_column(column, x, y, top, blocks, marks))
+        x += column.width_mm + stretch
     if columns[-1].kind == "temper":
         x, y = repeat(path, columns[-1], x, y, floor)
-    path.append(curve(x, y, WIDTH_MM, floor) if WIDTH_MM - x > 0.5 else "")
+    if WIDTH_MM - x > 0.5:
+        path.append(slope_path(slope(x, y, WIDTH_MM - 0.5, floor)))
 
     back = []
     if magnet_words:
         magnet_y = level(magnet)
-        until = crossing if crossing is not None else magnet_mm + 2
-        back.append(svg.line(0, magnet_y, until, magnet_y, "magnet"))
-        back.append(svg.text(0, magnet_y - 5.4, magnet_words[0], LABEL_PT, "label"))
-        back.append(svg.text(0, magnet_y - 1.5, magnet_words[1], LABEL_PT, "label"))
+        back.append(svg.line(0, magnet_y, crossing if crossing is not None else magnet_mm + 2, magnet_y, "magnet"))
+        back.append(svg.text(0, magnet_y - 1.5 - ROW_MM, magnet_words[0], SMALL_PT, "label"))
+        back.append(svg.text(0, magnet_y - 1.5, magnet_words[1], SMALL_PT, "label"))
         if crossing is not None:
             marks.append(svg.element("circle", cx=crossing, cy=magnet_y, r=1.1, class_="crossing"))
-    line = svg.element("path", d=" ".join(part for part in path if part), class_="heat")
-    return svg.drawing("heatline", "The heat line", description(stations, magnet_words), WIDTH_MM, bottom + 1.2,
-                       *back, line, *marks, *blocks)
+    line = svg.element("path", d=" ".join(path), class_="heat")
+    height = bottom + 1
+    return svg.drawing("heatline", "The heat line", description(stations, magnet_words), WIDTH_MM, height,
+                       *back, line, *marks, *blocks), height
+
+
+def draw_column(column, x, y, top, blocks, marks):
+    """The text of one stretch; returns how far down it reaches."""
+    reach = y
+    if column.standing:
+        blocks.append(column.standing.draw(x, y - ON_LINE))
+    if column.above:
+        above = column.above
+        number_y = top + above.cap_mm + (0.8 if above.aside else OVER_NUMBER + LABEL_CAP - 0.4)
+        blocks.append(above.draw(x, number_y))
+        small_rows(above.rows, x, number_y + 0.4, blocks)
+    if column.standing and column.standing.rows:
+        reach = small_rows(column.standing.rows, x, reach, blocks)
+    for words in column.checks:
+        marks.append(stop_mark(x + 1.5, reach + ROW_MM - 1.1))
+        blocks.append(svg.text(x + 4, reach + ROW_MM, words, SMALL_PT, "note", bold=True))
+        reach += ROW_MM
+    if column.hanging:
+        number_y = reach + 1.9 + column.hanging.cap_mm + (0 if column.hanging.aside else LABEL_CAP + OVER_NUMBER)
+        blocks.append(column.hanging.draw(x, number_y))
+        reach = small_rows(column.hanging.rows, x, number_y + 0.4, blocks)
+    return reach + 0.6
+
+
+def small_rows(rows, x, y, blocks):
+    """Rows of small text, one under the other; returns the last baseline."""
+    for row in rows:
+        y += ROW_MM
+        blocks.append(svg.text(x, y, row, SMALL_PT, "note"))
+    return y
 
 
 def repeat(path, column, x, y, floor):
     """Further tempers at the same heat: down to hand-warm and up again, without text."""
     for _ in range(column.again):
-        path.append(curve(x, y, x + 3, floor))
-        path.append(curve(x + 3, floor, x + 6, y))
+        path.append(slope_path(slope(x, y, x + 3, floor)))
+        path.append(slope_path(slope(x + 3, floor, x + 6, y)))
         x += 11
         path.append(f"H{svg.mm(x)}")
     return x, y
 
 
-def cross(x1, y1, x2, y2, at_y):
-    """Where the curve from (x1, y1) to (x2, y2) passes the height `at_y`."""
+def cross(points, at_y):
+    """Where a slope passes the height `at_y`: bisection on the Bézier, which only ever rises or falls."""
     low, high = 0.0, 1.0
-    for _ in range(30):
+    for _ in range(24):
         t = (low + high) / 2
-        y = y1 + (y2 - y1) * (3 * t * t - 2 * t ** 3)
+        weights = (1 - t) ** 3, 3 * (1 - t) ** 2 * t, 3 * (1 - t) * t * t, t ** 3
+        y = sum(weight * point[1] for weight, point in zip(weights, points))
         low, high = (t, high) if y > at_y else (low, t)
-    middle = (x1 + x2) / 2
-    return (1 - t) ** 3 * x1 + 3 * (1 - t) * t * middle + t ** 3 * x2
+    return sum(weight * point[0] for weight, point in zip(weights, points))
 
 
 def stop_mark(x, y):
     """A small octagon: stop here and check."""
     r, k = 1.45, 0.6
     corners = [(-k, -r), (k, -r), (r, -k), (r, k), (k, r), (-k, r), (-r, k), (-r, -k)]
-    return svg.polyline([(x + a, y + b) for a, b in corners], "stop", closed=True)
+    return svg.polyline([(x + a, y + b) for a, b in corners], "stop-mark", closed=True)
 
 
 def description(stations, magnet_words):

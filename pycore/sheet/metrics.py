@@ -76,6 +76,21 @@ def wrap(text, size_pt, room_mm, bold=False):
     return lines + [line] if line else lines
 
 
+def count_lines(runs, size_pt, room_mm):
+    """How many lines a paragraph takes that is set partly bold: `runs` is a list of (text, bold)."""
+    used, count = 0.0, 1
+    for text, bold in runs:
+        space = width_mm(" ", size_pt, bold)
+        for word in text.split():
+            word_mm = width_mm(word, size_pt, bold)
+            if used and used + space + word_mm > room_mm:
+                count, used = count + 1, 0.0
+            while word_mm > room_mm:
+                count, word_mm = count + 1, word_mm - room_mm
+            used += (space if used else 0) + word_mm
+    return count if used else 0
+
+
 def shorten(text, size_pt, room_mm, bold=False):
     """`text`, ended with an ellipsis where it would not fit on one line of `room_mm`."""
     if width_mm(text, size_pt, bold) <= room_mm:

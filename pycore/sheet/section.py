@@ -7,7 +7,7 @@ from . import svg
 from .metrics import width_mm
 from .words import is_number, number
 
-WIDTH_MM, HEIGHT_MM = 58, 31
+WIDTH_MM, HEIGHT_MM = 58, 26
 LEFT, RIGHT, TOP, FOOT = 7.5, 17.5, 1.6, 5
 TEXT_PT = 9.5
 

@@ -7,8 +7,8 @@ import re
 from markupsafe import Markup, escape
 
 from . import svg
-from .fit import choose_size, title_size
-from .heatline import draw_heat_line, stations_of
+from .fit import fit, title_size
+from .heatline import stations_of
 from .section import draw_section, nothing_to_draw
 from .words import (NOT_COMPUTED, HRC_middle, HRC_range, both_units, clean, fahrenheit, is_number, number, span)
 
@@ -91,8 +91,7 @@ class Reader:
     def number(self, path, unit=""):
         value = self.value(path)
         if not is_number(value):
-            reason = self.reason(path)
-            return self.shown(path, NOT_COMPUTED) + escape(f" ({reason})" if reason else "")
+            return self.shown(path, NOT_COMPUTED)
         return self.shown(path, f"{number(value)} {unit}".strip())
 
     def temperature(self, path):
@@ -124,7 +123,6 @@ def view_of(plan):
         "alternatives": [{"what": clean(row.get("what")), "gives": clean(row.get("gives"))}
                          for row in rows_of(plan.get("alternatives"))],
         "framed": verdict != "reachable",
-        "heat_line": draw_heat_line(plan, reader.link_to),
         "stations": stations_of(plan, reader.link_to),
         "steps": [step_of(row, reader, letters) for row in rows_of(plan.get("steps"))],
         "section": draw_section(plan) or nothing_to_draw(reader.reason("profile")),
@@ -139,16 +137,16 @@ def view_of(plan):
         "sign": svg.triangle(),
         "readings": 3,
         "foot": " · ".join(part for part in (clean(plan.get("date")), f"job {clean(plan.get('id'))}",
-                                              f"Quenchwright {clean(plan.get('version'))}",
-                                              f"data {clean(plan.get('data_edition'))}") if part),
+                                              f"Quenchwright {clean(plan.get('version'))}") if part),
+        "edition": clean(plan.get("data_edition")),
         "notes": notes_of(reader), "marks": [{"value": value, "text": text} for value, text in reader.marks],
         "others": others_of(plan), "phases": phases_of(plan), "composition": composition_of(plan),
         "sources": texts_of(plan.get("sources")),
         "aim_source": clean(part_of(plan, "aim").get("source")),
     }
-    view["marked"] = reader.marked
+    view["marked"] = lambda: reader.marked      # known only when all is drawn
     view["missing"] = missing_of(reader)
-    view["size"] = choose_size(view)
+    fit(plan, view, reader.link_to)
     return view
 
 
@@ -167,12 +165,19 @@ def cautions_of(plan):
     for row in rows:
         signal = row.get("signal") if row.get("signal") in SIGNALS else "caution"
         found.append({"id": clean(row.get("id")), "signal": signal, "text": clean(row.get("text")),
-                      "because": clean(row.get("because")), "source": clean(row.get("source")), "letter": ""})
+                      "because": sentence(clean(row.get("because"))), "source": clean(row.get("source")), "letter": ""})
     found.sort(key=lambda caution: SIGNALS.index(caution["signal"]))
     dangers = sum(caution["signal"] == "danger" for caution in found)
     for index, caution in enumerate(found[:max(PRINTED_CAUTIONS, dangers)]):
         caution["letter"] = chr(ord("A") + index) if index < 26 else str(index + 1)
     return found
+
+
+def sentence(text):
+    """A capital at its start and a full stop at its end."""
+    if not text:
+        return ""
+    return text[0].upper() + text[1:] + ("" if text[-1] in ".!?…" else ".")
 
 
 def step_of(row, reader, letters):
@@ -189,43 +194,49 @@ def step_of(row, reader, letters):
 
 
 def facts_of(plan, reader):
-    """Bath, time in it and skin: short lines of text for the foot."""
-    quench = part_of(plan, "quench")
+    """Bath, time in it and skin: short facts for the foot. A spare one also stands elsewhere on the sheet."""
+    quench, austenitize = part_of(plan, "quench"), part_of(plan, "austenitize")
     facts = []
+
+    def fact(name, text, spare=False):
+        facts.append({"name": name, "text": text, "spare": spare})
+
     if quench:
-        words = [escape(clean(quench.get("medium_name")) or clean(quench.get("medium")) or NOT_COMPUTED)]
-        window = quench.get("bath_window_C")
+        words = escape(clean(quench.get("medium_name")) or clean(quench.get("medium")) or NOT_COMPUTED)
         if quench.get("kind") in ("water", "oil"):
             if is_number(quench.get("volume_L")):
-                words.append(reader.number("quench.volume_L", "L"))
-            words.append(escape("at least ") + reader.number("quench.volume_needed_L", "L"))
-            stirred = {"still": "still", "moderate": "stirred", "strong": "stirred hard"}.get(quench.get("agitation"))
+                words += escape(", ") + reader.number("quench.volume_L", "L")
+            fact("Bath", words + escape(", at least ") + reader.number("quench.volume_needed_L", "L"))
+            fact("warms by", reader.number("quench.bath_rise_C", "°C"))
+            stirred = {"still": "still", "moderate": "moderately", "strong": "strongly"}.get(quench.get("agitation"))
             if stirred:
-                words.append(escape(stirred))
-        facts.append(("Bath", Markup(", ").join(words)))
+                fact("stirred", escape(stirred), spare=True)
+        else:
+            fact("Bath", words)
+        window = quench.get("bath_window_C")
         if isinstance(window, list) and len(window) == 2 and all(map(is_number, window)):
             in_F = span(*map(fahrenheit, window))
-            facts.append(("Bath at", reader.shown("quench.bath_C", f"{span(*window)} °C · {in_F} °F")))
-        if quench.get("kind") in ("water", "oil"):
-            facts.append(("Warms by", reader.number("quench.bath_rise_C", "°C")))
+            fact("at", reader.shown("quench.bath_C", f"{span(*window)} °C · {in_F} °F"), spare=True)
         if is_number(quench.get("flash_C")):
-            facts.append(("Flash point", reader.temperature("quench.flash_C")))
-        facts.append(("Out at", reader.temperature("quench.out_of_bath_C")))
-        facts.append(("Time in it", reader.number("quench.time_in_bath_s", "s")))
-    austenitize = part_of(plan, "austenitize")
+            fact("flash point", reader.temperature("quench.flash_C"))
+        fact("out at", reader.temperature("quench.out_of_bath_C"))
+        fact("after", reader.number("quench.time_in_bath_s", "s"))
     if austenitize:
-        facts.append(("Scale", reader.length("austenitize.scale_mm")))
-        facts.append(("Carbon lost", reader.length("austenitize.decarb_mm") + escape(" deep")))
+        fact("Scale", reader.length("austenitize.scale_mm"), spare=True)
+        fact("carbon lost", reader.length("austenitize.decarb_mm") + escape(" deep"))
         if is_number(austenitize.get("stock_mm")):
-            facts.append(("Leave to grind", reader.length("austenitize.stock_mm")))
-    return [{"name": name, "text": text} for name, text in facts]
+            fact("leave to grind", reader.length("austenitize.stock_mm"))
+    return facts
+
+
+ON_PAPER = ("austenitize", "quench", "temper", "as_quenched", "final", "profile", "cold")
 
 
 def missing_of(reader):
-    """Reasons for values that stand on the paper as "not computed", each once."""
+    """Reasons for values that would stand on the paper but could not be computed, each once."""
     found = []
     for path, reason in reader.marks:
-        if reader.value(path) is None and reason and reason not in found:
+        if reader.value(path) is None and reason and reason not in found and path.split(".")[0] in ON_PAPER:
             found.append(reason)
     return found
 

@@ -91,9 +91,10 @@ def steel_of(job):
     hyper = composition["C"] > HYPEREUTECTOID_C_PCT
     Ac1 = _value(known, "Ac1_C", lambda: float(critical.andrews_1965_Ac1_C(composition)))
     Ac3 = Acm = None
-    if hyper:
+    if hyper and "Ac3_C" in known and "Acm_C" not in known:
+        Ac3 = known["Ac3_C"][1]         # high-alloy grades are told with the end of their austenite range
+    elif hyper:
         Acm = _value(known, "Acm_C", lambda: float(critical.acm_Fe_C_C(composition["C"])) + Ac1 - critical.EUTECTOID_TEMPERATURE_C)
-        Ac3 = known.get("Ac3_C", (None, None))[1] if Acm is None else None
     else:
         Ac3 = max(_value(known, "Ac3_C", lambda: float(critical.andrews_1965_Ac3_C(composition))), Ac1 + 5)
     low, usual, high = (known["austenitize_C"][:3] if "austenitize_C" in known else _range_by_rule(Ac1, Ac3, Acm))

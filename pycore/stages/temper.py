@@ -9,7 +9,7 @@ from pycore.physics import colours, conduction, hardness, steel_properties, temp
 from pycore.physics.quench_media import radiation_coefficient
 from pycore.physics.validity import outside, say
 from pycore.stages.notes import mark, nearest, note, rounded
-from pycore.stages.quench import CENTRE, MIDRADIUS, SURFACE
+from pycore.stages.quench import CENTRE, MIDRADIUS, SURFACE  # places of the section
 
 ROOM_C = 20.0
 LOWEST_C = 150.0             # coolest useful temper: relieves without softening (common practice)
@@ -30,7 +30,7 @@ class Temper:
     temperature_C: float
     window_C: tuple
     hold_min: float
-    heat_up_min: float
+    heat_up_min: float | None
     cycles: int
     colour: str | None
     start_within_min: int
@@ -144,7 +144,11 @@ def temper(job, steel, section, quenched, found, aim_HRC):
             marks.append(mark("temper.temperature_C", "outside the data of the tempering regression: " + say(out)))
         if chosen < tempering.FIT_RANGE_C[0]:
             marks.append(mark("temper.temperature_C", "below 204 °C the hardness is drawn between the regression and the as-quenched value"))
-    heat_up = _heat_up_min(job, section, chosen, oven)
+    heat_up = None
+    if job.temper.kind in ("torch", "residual-heat"):
+        marks.append(mark("temper.heat_up_min", "not computed: the colour tells when it is there"))
+    else:
+        heat_up = _heat_up_min(job, section, chosen, oven)
     final, arrays = _final(response, found, chosen, total_h, accuracy)
     if found is not None and found.HRC[SURFACE] < low:
         marks.append(mark("temper.temperature_C", "the quench leaves it below the aim: no temper can raise it"))

@@ -11,8 +11,6 @@ from dataclasses import dataclass
 
 from steps import Stop, sha256
 
-MARKERS = ("csp", "style", "demo-sheet", "catalogue", "script", "assets")
-
 
 @dataclass(frozen=True)
 class Part:
@@ -51,12 +49,12 @@ def policy(script: str) -> str:
 
 
 def fill(template: str, pieces: dict[str, str]) -> str:
-    """Put each piece in the place of its marker; every marker must stand there exactly once."""
-    for name in MARKERS:
+    """Put each piece in the place of its marker; every marker must stand there exactly once, and no other."""
+    for name in pieces:
         times = template.count(f"<!--@{name}-->")
         if times != 1:
             raise Stop(f"web/index.html must contain <!--@{name}--> exactly once; it is there {times} times.")
-    strange = set(re.findall(r"<!--@([\w-]+)-->", template)) - set(MARKERS)
+    strange = set(re.findall(r"<!--@([\w-]+)-->", template)) - set(pieces)
     if strange:
         raise Stop(f"web/index.html has markers that the build does not know: {', '.join(sorted(strange))}")
     return re.sub(r"<!--@([\w-]+)-->", lambda match: pieces[match[1]], template)

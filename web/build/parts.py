@@ -43,10 +43,16 @@ def unzipped(path: Path) -> dict[str, bytes]:
         return {name: archive.read(name) for name in archive.namelist() if not name.endswith("/")}
 
 
-def wheel(folder: Path, name: str, version: str, requires: Iterable[str]) -> bytes:
-    """A pure wheel of one package folder, reproducible."""
+def names_in(archive: bytes) -> list[str]:
+    """The names in a zip held in memory."""
+    return zipfile.ZipFile(io.BytesIO(archive)).namelist()
+
+
+def wheel(folder: Path, extra: dict[str, str], name: str, version: str, requires: Iterable[str]) -> bytes:
+    """A pure wheel of one package folder and some files made for it, reproducible."""
     info = f"{name}-{version}.dist-info"
-    files = {f"{folder.name}/{path.relative_to(folder).as_posix()}": path.read_bytes() for path in sources(folder)}
+    files = {f"{folder.name}/{path}": text.encode() for path, text in extra.items()}
+    files |= {f"{folder.name}/{path.relative_to(folder).as_posix()}": path.read_bytes() for path in sources(folder)}
     lines = ["Metadata-Version: 2.1", f"Name: {name}", f"Version: {version}",
              *(f"Requires-Dist: {need}" for need in requires), ""]
     files[f"{info}/METADATA"] = "\n".join(lines).encode()

@@ -17,7 +17,7 @@ function finish({ path, label, control, hint, reading, width, optional }) {
   const readingNote = reading ? make("p", { class: "reading", id: `${id}-reading`, hidden: true }) : null;
   const faultNote = make("p", { class: "fault", id: `${id}-fault`, hidden: true });
   const name = make("label", { for: id }, label, optional ? make("span", { class: "optional" }, " optional") : null);
-  const root = make("div", { class: `field ${width ?? ""}`.trim() }, name, control.parentElement ?? control, make("div", { class: "notes" }, hintNote, readingNote, faultNote));
+  const root = make("div", { class: `field ${width ?? ""}`.trim() }, name, control.parentElement ?? control, make("div", { class: "field-notes" }, hintNote, readingNote, faultNote));
   const refresh = () => {
     if (readingNote) {
       const words = reading(control.value);

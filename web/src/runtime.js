@@ -22,6 +22,8 @@ const PHASES = {
 const PHASE_LIMIT_S = 45;
 const CALL_LIMIT_S = 20;
 
+const NOT_RUNNING = "Python is not running.";
+
 const NEEDS = {
   Worker: "background workers",
   WebAssembly: "WebAssembly",
@@ -37,6 +39,7 @@ export function startRuntime({ onPhase, onReady, onFailure, takeParts = takeEmbe
   let parts = null; // what a new worker needs, kept for a fast restart
   let worker = null;
   let ready = false;
+  let down = false; // no worker is there and none is coming
   let phase = "check";
   let watchdog = 0;
   let nextId = 1;
@@ -62,7 +65,9 @@ export function startRuntime({ onPhase, onReady, onFailure, takeParts = takeEmbe
   }
 
   function cutShort(error) {
+    down = true;
     stopWorker();
+    answerAll(() => bug("worker-stopped", NOT_RUNNING));
     fail({
       what: "The program file could not be unpacked.",
       why: "It may be cut short or changed on its way here, or memory is short.",
@@ -79,6 +84,7 @@ export function startRuntime({ onPhase, onReady, onFailure, takeParts = takeEmbe
   async function begin() {
     const missing = missingFeatures();
     if (missing.length) {
+      down = true;
       fail({
         what: "This browser cannot run the calculation.",
         why: `It lacks ${missing.join(", ")}.`,
@@ -87,7 +93,6 @@ export function startRuntime({ onPhase, onReady, onFailure, takeParts = takeEmbe
       });
       return;
     }
-    enter("unpack");
     try {
       parts = takeParts();
     } catch (error) {
@@ -99,6 +104,8 @@ export function startRuntime({ onPhase, onReady, onFailure, takeParts = takeEmbe
 
   /* Parts go over as they become ready; a part that fails gives up the worker that waits for it. */
   async function startWorker() {
+    down = false;
+    enter("unpack");
     const up = new Promise((resolve) => (settled = resolve));
     const turn = ++turns;
     try {
@@ -151,11 +158,12 @@ export function startRuntime({ onPhase, onReady, onFailure, takeParts = takeEmbe
   }
 
   function crashed(what, technical) {
+    down = true;
     stopWorker();
     answerAll(() => bug("worker-died", what));
     fail({
       what: "Python stopped.",
-      why: `In plain words: ${what}.`,
+      why: `The browser reported: ${what}.`,
       hint: "Your entries are safe. Start Python again; if it stops again, reload the page.",
       technical,
     });
@@ -180,8 +188,8 @@ export function startRuntime({ onPhase, onReady, onFailure, takeParts = takeEmbe
   function call(request, { timeout_s = CALL_LIMIT_S } = {}) {
     return new Promise((resolve) => {
       const entry = { id: nextId++, plan: request.do === "plan", text: JSON.stringify(request), timeout_s, resolve };
-      if (!worker && parts) {
-        resolve(bug("worker-stopped", "Python is not running. Start it again."));
+      if (down) {
+        resolve(bug("worker-stopped", NOT_RUNNING));
         return;
       }
       if (entry.plan) supersedePlans();
@@ -201,6 +209,7 @@ export function startRuntime({ onPhase, onReady, onFailure, takeParts = takeEmbe
     if (!ready || sent || !waiting.length) return;
     sent = waiting.shift();
     sent.timer = setTimeout(overLimit, sent.timeout_s * 1000);
+    if (sent.plan) mark("plan asked");
     worker.postMessage({ kind: "call", id: sent.id, text: sent.text });
   }
 
@@ -234,6 +243,12 @@ export function startRuntime({ onPhase, onReady, onFailure, takeParts = takeEmbe
 
 function blobWorker(url) {
   return new Worker(url, { name: "python" });
+}
+
+/* For whoever measures: when the newest plan went to Python. */
+function mark(name) {
+  performance.clearMarks(name);
+  performance.mark(name);
 }
 
 function userAgent() {
