@@ -39,6 +39,7 @@ DIST = ROOT / "dist"
 PAGE = DIST / "quenchwright.html"
 DEMO_JOB = CORE / "data" / "demo_job.json"
 DEMO_SHEET = DIST / "demo-sheet.html"
+DEMO_DATE = "2026-12-01"  # fixed: the same commit gives the same sheet on any day
 LIMIT_MB = 12
 FROZEN = {"numpy", "jinja2", "markupsafe", "quenchwright"}
 
@@ -218,7 +219,7 @@ class Build:
 
     def demo(self) -> None:
         self.steps.step("The demo's sheet")
-        run([fetch.PYTHON, "-m", "pycore", DEMO_JOB, "--format", "html", "--out", DEMO_SHEET],
+        run([fetch.PYTHON, "-m", "pycore", DEMO_JOB, "--format", "html", "--date", DEMO_DATE, "--output", DEMO_SHEET],
             "The demo job could not be planned.")
         for path in (PAGE, DEMO_SHEET):
             print(f"\n{path.relative_to(ROOT)}  {path.stat().st_size / 1000:,.1f} kB", end="")

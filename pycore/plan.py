@@ -21,7 +21,6 @@ from pycore.stages.structure import place_json
 from pycore.stages.temper import temper
 
 SCHEMA = "quenchwright.plan/1"
-HARDER_THAN_AIM_HRC = 1.0       # the quench should leave it at least this far above the middle of the aim
 CURVE_POINTS = 60
 
 
@@ -54,7 +53,7 @@ def plan(job):
     section = section_of(job)
     steel = steel_of(job)
     heat = austenitize(job, steel, section)
-    quenched = quench(job, steel, section, heat, sum(aim_HRC) / 2 + HARDER_THAN_AIM_HRC)
+    quenched = quench(job, steel, section, heat, aim_HRC)
     chilled, hardened = cold(job, steel, section, quenched)
     tempered = temper(job, steel, section, quenched, hardened, aim_HRC)
     proven = proof(job, steel, section, heat, quenched, hardened, tempered, aim_HRC)

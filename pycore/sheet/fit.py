@@ -11,9 +11,10 @@ from .metrics import POINT_MM, count_lines, wrap
 # Paper height less two margins of 10 mm and a little air.
 PAPERS = (("letter", 279.4 - 20 - 2), ("a4", 297 - 20 - 3))
 # Size classes of sheet.css: number, steps in pt, foot in pt, padding above and below a step in mm,
-# largest number on the heat line in pt. From 5 on, what the notes also hold is left out (see spare in sheet.css).
+# largest number on the heat line in pt. From 4 on, what also stands elsewhere is left out on paper, from 6 on
+# the headings of the foot, in 7 the reasons of the cautions (they stay in the notes).
 SIZES = ((1, 11.5, 10, 1.0, 46), (2, 11, 10, 0.9, 42), (3, 10.5, 9.5, 0.8, 40), (4, 10, 9.5, 0.7, 38),
-         (5, 9.5, 9, 0.55, 34), (6, 9.5, 9, 0.4, 32))
+         (5, 9.5, 9, 0.55, 34), (6, 9.5, 9, 0.4, 32), (7, 9.5, 9, 0.35, 32))
 TWO_PAGES = 3                  # when nothing fits on one page, two pages in comfortable type
 TITLE_SIZES = ((28, 1), (24, 1), (20, 1), (17, 2), (14, 2), (12, 3))
 HEAD_MM, DO_MM, LOOK_MM, CARE_MM = 130, 62, 70, 119
@@ -49,11 +50,11 @@ def height_of(view, size, line_mm):
         total += foot * sum(lines(f"– {row['what']} Gives {row['gives']}.", foot_pt, 172, True) for row in view["alternatives"])
     else:
         total = max(total + 4.25 * lines(" ".join(view["reasons"]), 10, HEAD_MM), 19.5) + 2.5
-    total += line_mm + 2 + 1 + (0.5 if dense else 4.6)
+    total += line_mm + 2 + 1 + (0.3 if dense else 4.6)
     for step in view["steps"]:
         at = " · ".join(part for part in (step["at_text"], step["time_text"]) if part)
         runs = [(step["do"] + (" stop and check" if step["hold"] else ""), True)]
-        if dense:
+        if number >= 3:
             do = count_lines(runs + [(at, False)], bench_pt, DO_MM)
         else:
             do = count_lines(runs, bench_pt, DO_MM) + lines(at, bench_pt, DO_MM)
@@ -61,7 +62,7 @@ def height_of(view, size, line_mm):
         total += max(8, bench * max(do, look)) + 2 * pad + (0.4 if step["hold"] else 0.2)
     left = (4.9 if number < 6 else 0) + 26 + 4 + 3 * foot
     right = (4.9 if number < 6 else 0) + sum(
-        count_lines([(row["signal"].upper(), True), (f"{row['text']} {row['because']}", False)], foot_pt, CARE_MM) * foot + 0.6
+        count_lines([(row["signal"].upper(), True), (f"{row['text']} {row['because'] if number < 7 else ''}", False)], foot_pt, CARE_MM) * foot + 0.6
         for row in view["cautions"])
     total += max(left, right) + 1.8
     total += 1 + foot * lines("    ".join(f"{row['name']} {plain(row['text'])}" for row in view["facts"]
@@ -70,7 +71,7 @@ def height_of(view, size, line_mm):
         room = (186 - 4 * (len(view["faults"]) - 1)) / len(view["faults"])
         total += 2.2 + foot + foot * max(
             lines(row["then"] if dense and row["then"] else f"{row['cause']} {row['then']}", foot_pt, room) for row in view["faults"])
-    return total + 10 + 1.2 + 3.6 * (2 if view["marked"] or view["missing"] else 1)
+    return total + 9.5 + 1.2 + 3.4 * (2 if view["marked"] or view["missing"] else 1)
 
 
 def fit(plan, view, link_to):
@@ -84,15 +85,13 @@ def fit(plan, view, link_to):
 
     line(SIZES[-1][-1])                    # notes which numbers on the line are marked, for the legend
     view["marked"] = view["marked"]()
-    chosen = None
+    smallest = None                        # the line is drawn once, for the paper with the least room
     for paper, room_mm in PAPERS:
         for size in SIZES:
-            # The line is drawn once, for the smaller paper; the larger one only gets larger text.
-            picture, line_mm = chosen or line(size[-1])
-            if height_of(view, size, line_mm) <= room_mm:
+            if height_of(view, size, line(min(size[-1], (smallest or size)[-1]))[1]) <= room_mm:
+                smallest = smallest or size
                 break
         else:
-            size = SIZES[TWO_PAGES - 1] if paper == "letter" else size
+            size = SIZES[TWO_PAGES - 1]
         view[paper] = size[0]
-        chosen = chosen or line(size[-1])
-    view["heat_line"] = chosen[0]
+    view["heat_line"] = line((smallest or SIZES[TWO_PAGES - 1])[-1])[0]

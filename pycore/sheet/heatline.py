@@ -193,7 +193,8 @@ def slopes_of(columns, first_mm):
 
 def arrange(plan, stations, magnet_mm, largest_pt):
     """The largest type at which all stretches fit side by side."""
-    choices = [(size, 17, mode) for size in range(largest_pt, WALL_PT - 1, -1) for mode in ("wide", "middle", "narrow")]
+    choices = [(size, 17, mode) for size in range(largest_pt, min(largest_pt, 34) - 1, -1) for mode in ("wide", "middle")]
+    choices += [(size, 17, "narrow") for size in range(min(largest_pt, 38), WALL_PT - 1, -1)]
     choices += [(WALL_PT, size, "narrow") for size in (15, 13, 11, 10)]
     choices += [(size, 10, "narrow") for size in range(WALL_PT - 2, 8, -2)]
     for big_pt, small_pt, mode in choices:

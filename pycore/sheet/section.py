@@ -4,7 +4,6 @@ import math
 from markupsafe import Markup
 
 from . import svg
-from .metrics import width_mm
 from .words import is_number, number
 
 WIDTH_MM, HEIGHT_MM = 58, 26
@@ -75,18 +74,11 @@ def draw_section(plan):
     parts.append(svg.text(LEFT + plot_w + 1.2, second + 1.15, "tempered", TEXT_PT, "name", bold=True))
     base = HEIGHT_MM - 1
     across = profile.get("width_mm")
+    size = ""
     if is_number(across):
-        if plan.get("units") == "in":
-            middle_words = f"{number(across / 25.4)} in through"
-        else:
-            middle_words = f"{number(across)} mm through"
-    else:
-        middle_words = "centre"
-    parts.append(svg.text(LEFT, base, "skin", TEXT_PT, "tick"))
-    parts.append(svg.text(LEFT + plot_w, base, "skin", TEXT_PT, "tick", anchor="end"))
-    if width_mm(middle_words, TEXT_PT) < plot_w - 18:
-        parts.append(svg.text(LEFT + plot_w / 2, base, middle_words, TEXT_PT, "tick", anchor="middle"))
-    words = (f"From skin to skin, {middle_words}. As quenched {number(quenched[1][0])} HRC at the skin and "
+        size = f", {number(across / 25.4)} in" if plan.get("units") == "in" else f", {number(across)} mm"
+    parts.append(svg.text(LEFT + plot_w / 2, base, "skin to skin" + size, TEXT_PT, "tick", anchor="middle"))
+    words = (f"From skin to skin{size}. As quenched {number(quenched[1][0])} HRC at the skin and "
              f"{number(quenched[1][-1])} at the centre; after temper {number(tempered[1][0])} and "
              f"{number(tempered[1][-1])}. The grey band and the thin lines are the ranges; the table has the numbers.")
     return svg.drawing("section", "Hardness through the section", words, WIDTH_MM, HEIGHT_MM, *parts)

@@ -80,12 +80,19 @@ class Reader:
         self.marked = self.marked or outside
         return ("#" + anchor(path) if isinstance(self.why.get(path), dict) else None), outside
 
-    def shown(self, path, text):
-        """`text` for the value at `path`: linked to its note, marked "~" when outside its range."""
+    def shown(self, path, text, together=False):
+        """`text` for the value at `path`: linked to its note, marked "~" when outside its range.
+        With `together` its short parts, set apart by " · ", are not broken over two lines."""
         if not text:
             return Markup("")
         address, outside = self.link_to(path)
-        words = escape(("~" if outside and not text.startswith("~") else "") + text)
+        text = ("~" if outside and not text.startswith("~") else "") + text
+        if together:
+            words = Markup(' <span class="dot">·</span> ').join(
+                Markup('<span class="whole">{}</span>').format(part) if len(part) <= 26 else escape(part)
+                for part in text.split(" · "))
+        else:
+            words = escape(text)
         return Markup('<a class="why" href="{}">{}</a>').format(address, words) if address else words
 
     def number(self, path, unit=""):
@@ -186,8 +193,8 @@ def step_of(row, reader, letters):
     known = row.get("cautions") if isinstance(row.get("cautions"), list) else []
     return {
         "n": clean(row.get("n")), "do": clean(row.get("do")), "hold": row.get("hold") is True,
-        "at": reader.shown(STEP_AT.get(kind, ""), at), "time": reader.shown(STEP_TIME.get(kind, ""), time),
-        "at_text": at, "time_text": time, "look": clean(row.get("look")),
+        "at": reader.shown(STEP_AT.get(kind, ""), at, together=True),
+        "time": reader.shown(STEP_TIME.get(kind, ""), time, together=True), "at_text": at, "time_text": time, "look": clean(row.get("look")),
         "blanks": [part.strip() for part in clean(row.get("blank")).split(" / ") if part.strip()] or ["was"],
         "cautions": sorted({letters[name] for name in known if isinstance(name, str) and name in letters}),
     }
@@ -219,8 +226,9 @@ def facts_of(plan, reader):
             fact("at", reader.shown("quench.bath_C", f"{span(*window)} °C · {in_F} °F"), spare=True)
         if is_number(quench.get("flash_C")):
             fact("flash point", reader.temperature("quench.flash_C"))
-        fact("out at", reader.temperature("quench.out_of_bath_C"))
-        fact("after", reader.number("quench.time_in_bath_s", "s"))
+        told = any(step.get("id") == "out" for step in rows_of(plan.get("steps")))
+        fact("out at", reader.temperature("quench.out_of_bath_C"), spare=told)
+        fact("after", reader.number("quench.time_in_bath_s", "s"), spare=told)
     if austenitize:
         fact("Scale", reader.length("austenitize.scale_mm"), spare=True)
         fact("carbon lost", reader.length("austenitize.decarb_mm") + escape(" deep"))

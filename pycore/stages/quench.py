@@ -20,6 +20,7 @@ OUT_ABOVE_BATH_K = 10.0
 ENTRY_ABOVE_AC1_K, ENTRY_BELOW_AC3_K = 20.0, 15.0    # common practice: enter above about Ac1 + 20-30 K
 ALLOWED_RISE_K = {"water": 10.0, "oil": 38.0}        # oil: 1 US gal/lb rule; water: common practice
 LONGEST_QUENCH_S = 5 * 3600.0
+HARDER_THAN_AIM_HRC = 1.0       # what tempering needs to come down from, above the middle of the aim
 WATER_HOTTEST_C = 95.0
 BATH_ORDER = ("still-air", "fan-air", "plates", "canola", "medium-oil", "fast-oil", "water", "brine")  # mildest first
 
@@ -96,7 +97,7 @@ def _hardens_mm(steel, kind):
     return air or 0.0
 
 
-def quench(job, steel, section, heat, needed_HRC):
+def quench(job, steel, section, heat, aim_HRC):
     """Tries every bath of the shop and takes the mildest that gives the hardness needed, deepest first."""
     baths = job.baths
     rows = [words.media_row(bath.medium) for bath in baths]
@@ -135,21 +136,22 @@ def quench(job, steel, section, heat, needed_HRC):
             found = structure.structure_of(steel, time_s, curves, ROOM_C)
         risk = crack_risk(job, steel, section, bath.medium, kind)
         results.append((bath, row, time_s, curves, found, risk))
-    chosen = _choose(job, results, needed_HRC)
+    chosen = _choose(job, results, aim_HRC)
     return _result(job, steel, section, heat, results, chosen, rises, needs, working, out_C, walk_s, limit_s, lowest_C, entry)
 
 
-def _choose(job, results, needed_HRC):
-    """Index of the bath to take: hard enough at the surface, then no high crack risk, then hard through, then mildest."""
+def _choose(job, results, aim_HRC):
+    """Index of the bath to take: within the aim at the surface, then no high crack risk, then room to temper, then depth."""
     if "medium" in job.decided:
         return next(i for i, r in enumerate(results) if r[0].medium == job.decided["medium"])
+    low, high = aim_HRC
+    room = (low + high) / 2 + HARDER_THAN_AIM_HRC
 
     def rank(i):
         bath, _, _, _, found, risk = results[i]
-        hard = found is not None and found.HRC[SURFACE] >= needed_HRC
-        through = found is not None and found.HRC[CENTRE] >= needed_HRC
-        softer_by = 0.0 if hard or found is None else needed_HRC - found.HRC[SURFACE]
-        return (not hard, risk["grade"] == "high", round(softer_by), not through, BATH_ORDER.index(bath.medium))
+        surface, centre = (found.HRC[SURFACE], found.HRC[CENTRE]) if found is not None else (-1.0, -1.0)
+        short = 0 if surface >= low + 0.5 else round(low + 0.5 - surface)
+        return (short, risk["grade"] == "high", surface < room, centre < room, BATH_ORDER.index(bath.medium))
     return min(range(len(results)), key=rank)
 
 

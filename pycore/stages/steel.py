@@ -6,7 +6,7 @@ from pycore.physics import critical, hardenability, martensite
 from pycore.physics.validity import outside, say
 from pycore.stages.notes import mark, note, rounded
 
-GRAIN_SIZE_ASSUMED = 8.0      # fine-grained practice, ASTM 7-9 after a short soak (common practice)
+GRAIN_SIZE_ASSUMED = 7.0      # what ASTM A255 assumes; fine-grained steel after a short soak is 7 to 9
 # Residuals of commercial bar where a certificate is silent (common practice): they matter for plain carbon steel.
 RESIDUALS_PCT = {"Cr": 0.08, "Ni": 0.08, "Mo": 0.02, "Cu": 0.12}
 SILENT_PCT = {"Mn": 0.60, "Si": 0.22}

@@ -8,9 +8,6 @@ from pycore.physics.validity import outside
 from pycore.stages.notes import rounded
 
 PHASES = ("ferrite", "pearlite", "bainite", "martensite", "retained_austenite")
-# Undissolved carbide gives pearlite more places to start. One factor on its speed, set once on the observed
-# critical diameters of twelve W-type heats in brine (Roberts, Krauss & Kennedy, Tool Steels, Table 7-3).
-CARBIDE_NUCLEATION = 1.5
 RATE_CHECK_C = 704.0           # 1300 °F, where the Jominy scale is told
 RATE_END_C = 500.0
 SEMI_INFINITE_RATIO = 0.622    # mean rate 704-500 °C over rate at 704 °C, erf solution of the end-quenched bar
@@ -53,11 +50,11 @@ def structure_of(steel, time_s, curves_C, end_C):
     """Structure along cooling curves (places, steps) of a modelled steel, cooled at last to end_C."""
     C, Ms = steel.austenite["C"], steel.Ms_C
     carbide = steel.Acm_C is not None and steel.dissolved_C_pct < steel.composition["C"]
-    grain = steel.grain_size + (2 * np.log2(CARBIDE_NUCLEATION) if carbide else 0.0)
     Ae3 = max(steel.Ac3_C or steel.Ac1_C, steel.Ac1_C + 1)
     formed = kinetics.decompose(time_s, curves_C, steel.austenite, Ae3_C=Ae3, Ae1_C=steel.Ac1_C,
                                 Bs_C=float(kinetics.kirkaldy_venugopalan_1984_Bs_C(steel.austenite)), Ms_C=Ms,
-                                grain_size=grain)
+                                grain_size=steel.grain_size,
+                                nucleation=kinetics.carbide_nucleation(steel.composition) if carbide else 1.0)
     rate = jominy_rate_C_per_s(time_s, curves_C)
     soft = {name: formed[name] for name in ("ferrite", "pearlite", "bainite")}
     share_soft = sum(soft.values())
