@@ -127,7 +127,10 @@ class Build:
         self.exercised = self.work / "exercise.json"
         once(self.exercised, key_of(*self.compiled.values(), *HELPERS.glob("exercise.*"), fetch.WEB / "src" / "tree.js"),
              self.exercise_whole)
-        modules = json.loads(self.exercised.read_text())["modules"]
+        said = json.loads(self.exercised.read_text())
+        if not said["answers"]["demo"]["ok"]:
+            raise Stop(f"Inside Pyodide the demo job is not planned: {json.dumps(said['answers']['demo'])[:600]}")
+        modules = said["modules"]
         self.library = {
             "stdlib": parts.trimmed_stdlib(self.compiled["stdlib"], modules),
             "numpy": parts.tree(self.compiled["numpy"], parts.numpy_keeper(modules)),

@@ -1,7 +1,9 @@
 """Command line: python -m pycore JOB.json … [-o OUT] [--format html|json|text]."""
+
 import argparse
 import datetime
 import json
+import pathlib
 import sys
 
 from pycore import __version__
@@ -42,9 +44,16 @@ def main(arguments=None):
 
 def _options(arguments):
     parser = argparse.ArgumentParser(prog="python -m pycore", description="Plan hardening and tempering from a job.")
-    parser.add_argument("jobs", nargs="+", metavar="JOB", help="a job as JSON, a saved sheet, a JSON Lines file of jobs, or - for standard input")
+    parser.add_argument(
+        "jobs",
+        nargs="+",
+        metavar="JOB",
+        help="a job as JSON, a saved sheet, a JSON Lines file of jobs, or - for standard input",
+    )
     parser.add_argument("-o", "--output", help="file to write (standard output otherwise)")
-    parser.add_argument("--format", choices=FORMATS, help="html: the sheet as a file; json: the plan; text: the sheet for a terminal")
+    parser.add_argument(
+        "--format", choices=FORMATS, help="html: the sheet as a file; json: the plan; text: the sheet for a terminal"
+    )
     parser.add_argument("--date", help="date on the sheet, YYYY-MM-DD (today otherwise)")
     parser.add_argument("--version", action="version", version=f"quenchwright {__version__}")
     return parser.parse_args(arguments)
@@ -59,7 +68,7 @@ def _read_jobs(names):
     """(one of several, where, job or None, fault or None) for every job in the files named."""
     for name in names:
         try:
-            text = sys.stdin.read() if name == "-" else open(name, encoding="utf-8").read()
+            text = sys.stdin.read() if name == "-" else pathlib.Path(name).read_text(encoding="utf-8")
         except (OSError, UnicodeDecodeError) as error:
             yield len(names) > 1, name, None, Fault("file", str(error), "a readable UTF-8 file")
             continue
@@ -70,6 +79,7 @@ def _jobs_in(text, name, many):
     """One JSON document, a saved sheet, or a job on every line."""
     if "<script" in text[:5_000_000] and text.lstrip().startswith("<"):
         from pycore.sheet import open_sheet
+
         try:
             yield many, name, open_sheet(text), None
         except InputErrors as errors:

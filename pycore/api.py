@@ -1,4 +1,5 @@
 """The one door the page uses: JSON text in, JSON text out. It never raises."""
+
 import hashlib
 import json
 import traceback
@@ -6,8 +7,9 @@ import traceback
 from pycore import DATA_EDITION, __version__, words
 from pycore.data import demo_job, number, table
 from pycore.errors import Fault, InputErrors
-from pycore.job import SMALLEST_MM, LARGEST_LENGTH_MM, LARGEST_MM, parse_job
+from pycore.job import LARGEST_LENGTH_MM, parse_job
 from pycore.plan import plan
+from pycore.reading import LARGEST_MM, SMALLEST_MM
 
 
 def run(request_text):
@@ -15,8 +17,9 @@ def run(request_text):
     try:
         request = json.loads(request_text)
         if not isinstance(request, dict) or request.get("do") not in ACTIONS:
-            raise InputErrors([Fault("do", request.get("do") if isinstance(request, dict) else None,
-                                     "one of " + ", ".join(ACTIONS))])
+            raise InputErrors(
+                [Fault("do", request.get("do") if isinstance(request, dict) else None, "one of " + ", ".join(ACTIONS))]
+            )
         answer = {"ok": True, **ACTIONS[request["do"]](request)}
     except InputErrors as errors:
         answer = {"ok": False, "errors": errors.to_json()}
@@ -31,8 +34,12 @@ def _bug(error):
     last = traceback.extract_tb(error.__traceback__)[-1]
     where = f"{last.filename.rsplit('/', 1)[-1]}:{last.lineno}"
     what = f"{type(error).__name__}: {error}"[:300]
-    return {"id": hashlib.sha256(f"{where} {what}".encode()).hexdigest()[:8], "what": what, "where": where,
-            "versions": {"quenchwright": __version__, "data": DATA_EDITION}}
+    return {
+        "id": hashlib.sha256(f"{where} {what}".encode()).hexdigest()[:8],
+        "what": what,
+        "where": where,
+        "versions": {"quenchwright": __version__, "data": DATA_EDITION},
+    }
 
 
 def _plan(request):
@@ -72,22 +79,60 @@ def _named(ids):
 def _catalogue(request):
     """All the form offers, so that it works before Python is up."""
     split = lambda row: [alias for alias in (row["aliases"] or "").split("|") if alias]  # noqa: E731
-    return {"catalogue": {
-        "version": __version__, "data_edition": DATA_EDITION,
-        "grades": [{"id": r["id"], "name": r["name"], "aliases": split(r), "family": r["family"]} for r in table("grades")],
-        "uses": [{"id": r["id"], "name": r["name"], "hardness_HRC": [number(r["HRC_low"]), number(r["HRC_high"])], "zone": r["zone"]}
-                 for r in table("uses")],
-        "media": [{"id": r["id"], "name": r["name"], "kind": r["kind"], "default_C": words.default_bath_C(r), "liquid": words.is_liquid(r)}
-                  for r in table("media")],
-        "shapes": [{"id": id_, "name": name, "dimensions": [
-            {"id": d, "name": words.DIMENSION_NAMES[d], "required": d in needed} for d in needed + optional]}
-            for id_, (name, needed, optional) in words.SHAPES.items()],
-        "features": _named(words.FEATURES), "zones": _named(words.ZONES), "conditions": _named(words.CONDITIONS),
-        "heats": _named(words.HEATS), "atmospheres": _named(words.ATMOSPHERES), "tempers": _named(words.TEMPERS),
-        "colds": _named(words.COLDS), "agitations": _named(words.AGITATIONS), "units": _named(words.UNITS),
-        "elements": list(words.ELEMENTS), "demo_job": demo_job(),
-        "limits": {"length_mm": [SMALLEST_MM, LARGEST_LENGTH_MM], "section_mm": [SMALLEST_MM, LARGEST_MM], "elements_pct": words.ELEMENTS},
-    }}
+    return {
+        "catalogue": {
+            "version": __version__,
+            "data_edition": DATA_EDITION,
+            "grades": [
+                {"id": r["id"], "name": r["name"], "aliases": split(r), "family": r["family"]} for r in table("grades")
+            ],
+            "uses": [
+                {
+                    "id": r["id"],
+                    "name": r["name"],
+                    "hardness_HRC": [number(r["HRC_low"]), number(r["HRC_high"])],
+                    "zone": r["zone"],
+                }
+                for r in table("uses")
+            ],
+            "media": [
+                {
+                    "id": r["id"],
+                    "name": r["name"],
+                    "kind": r["kind"],
+                    "default_C": words.default_bath_C(r),
+                    "liquid": words.is_liquid(r),
+                }
+                for r in table("media")
+            ],
+            "shapes": [
+                {
+                    "id": id_,
+                    "name": name,
+                    "dimensions": [
+                        {"id": d, "name": words.DIMENSION_NAMES[d], "required": d in needed} for d in needed + optional
+                    ],
+                }
+                for id_, (name, needed, optional) in words.SHAPES.items()
+            ],
+            "features": _named(words.FEATURES),
+            "zones": _named(words.ZONES),
+            "conditions": _named(words.CONDITIONS),
+            "heats": _named(words.HEATS),
+            "atmospheres": _named(words.ATMOSPHERES),
+            "tempers": _named(words.TEMPERS),
+            "colds": _named(words.COLDS),
+            "agitations": _named(words.AGITATIONS),
+            "units": _named(words.UNITS),
+            "elements": list(words.ELEMENTS),
+            "demo_job": demo_job(),
+            "limits": {
+                "length_mm": [SMALLEST_MM, LARGEST_LENGTH_MM],
+                "section_mm": [SMALLEST_MM, LARGEST_MM],
+                "elements_pct": words.ELEMENTS,
+            },
+        }
+    }
 
 
 ACTIONS = {"plan": _plan, "save": _save, "open": _open, "catalogue": _catalogue}

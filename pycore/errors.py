@@ -1,11 +1,12 @@
 """One error type for everything a user can get wrong: it carries every fault at once."""
+
 import math
 
 
 class Fault:
     """One thing wrong with the input: where, what was given, what would be accepted."""
 
-    __slots__ = ("path", "value", "expected")
+    __slots__ = ("expected", "path", "value")
 
     def __init__(self, path, value, expected):
         self.path, self.value, self.expected = path, value, expected
@@ -38,8 +39,11 @@ def show(value, longest=60):
     """A value as it may stand in a message: short, and never markup of its own."""
     text = value if isinstance(value, str) else repr(value)
     text = " ".join(text.split())
-    return repr(text if len(text) <= longest else text[: longest - 1] + "…") if isinstance(value, str) else (
-        text if len(text) <= longest else text[: longest - 1] + "…")
+    return (
+        repr(text if len(text) <= longest else text[: longest - 1] + "…")
+        if isinstance(value, str)
+        else (text if len(text) <= longest else text[: longest - 1] + "…")
+    )
 
 
 def plain(value):

@@ -1,18 +1,15 @@
 """The job: what the smith states. Parsing names every fault at once and changes nothing that was right."""
-import math
+
 from dataclasses import dataclass
 
 from pycore import words
 from pycore.data import number, table
 from pycore.errors import Fault, InputErrors
-from pycore.lengths import EXPECTED as LENGTH_EXPECTED
-from pycore.lengths import parse_length_mm
+from pycore.reading import LARGEST_MM, SMALLEST_MM, Reader, as_number
 
 SCHEMA = "quenchwright.job/1"
-LONGEST_TEXT = 200
-LARGEST_MM, SMALLEST_MM = 1000.0, 0.3
 LARGEST_LENGTH_MM = 10000.0
-LOWEST_TEMPER_C = 100.0        # an oven that cannot reach boiling water's heat tempers nothing
+LOWEST_TEMPER_C = 100.0  # an oven that cannot reach boiling water's heat tempers nothing
 HARDNESS_RANGE_HRC = (20.0, 68.0)
 
 
@@ -80,19 +77,47 @@ class Job:
         if self.hardness_HRC:
             aim["hardness_HRC"] = list(self.hardness_HRC)
         job = {
-            "schema": SCHEMA, "title": self.title, "quantity": self.quantity, "units": self.units, "steel": steel,
-            "part": _present({"shape": part.shape, "dimensions_mm": dict(part.dimensions_mm),
-                              "thinnest_mm": part.thinnest_mm, "features": list(part.features), "zone": part.zone,
-                              "zone_mm": part.zone_mm, "condition": part.condition}),
+            "schema": SCHEMA,
+            "title": self.title,
+            "quantity": self.quantity,
+            "units": self.units,
+            "steel": steel,
+            "part": _present(
+                {
+                    "shape": part.shape,
+                    "dimensions_mm": dict(part.dimensions_mm),
+                    "thinnest_mm": part.thinnest_mm,
+                    "features": list(part.features),
+                    "zone": part.zone,
+                    "zone_mm": part.zone_mm,
+                    "condition": part.condition,
+                }
+            ),
             "aim": aim,
             "shop": {
-                "heat": _present({"kind": heat.kind, "accuracy_C": heat.accuracy_C, "max_C": heat.max_C,
-                                  "atmosphere": heat.atmosphere, "pyrometer": heat.pyrometer}),
-                "baths": [_present({"medium": bath.medium, "volume_L": bath.volume_L,
-                                    "temperature_C": bath.temperature_C, "agitation": bath.agitation})
-                          for bath in self.baths],
+                "heat": _present(
+                    {
+                        "kind": heat.kind,
+                        "accuracy_C": heat.accuracy_C,
+                        "max_C": heat.max_C,
+                        "atmosphere": heat.atmosphere,
+                        "pyrometer": heat.pyrometer,
+                    }
+                ),
+                "baths": [
+                    _present(
+                        {
+                            "medium": bath.medium,
+                            "volume_L": bath.volume_L,
+                            "temperature_C": bath.temperature_C,
+                            "agitation": bath.agitation,
+                        }
+                    )
+                    for bath in self.baths
+                ],
                 "temper": _present({"kind": temper.kind, "max_C": temper.max_C, "accuracy_C": temper.accuracy_C}),
-                "cold": self.cold},
+                "cold": self.cold,
+            },
         }
         if self.decided:
             job["decided"] = dict(self.decided)
@@ -103,102 +128,9 @@ def _present(fields):
     return {name: value for name, value in fields.items() if value is not None}
 
 
-class _Reader:
-    """Reads fields of nested dictionaries and remembers every fault on the way."""
-
-    def __init__(self):
-        self.faults = []
-
-    def fault(self, path, value, expected):
-        self.faults.append(Fault(path, value, expected))
-
-    def section(self, holder, name, path, required=True):
-        value = holder.get(name) if isinstance(holder, dict) else None
-        if isinstance(value, dict):
-            return value
-        if value is not None or required:
-            self.fault(path, value, "an object with named fields")
-        return {}
-
-    def text(self, holder, name, path, default=""):
-        value = holder.get(name)
-        if value is None:
-            return default
-        if not isinstance(value, str) or len(value) > LONGEST_TEXT:
-            self.fault(path, value, f"text of at most {LONGEST_TEXT} characters")
-            return default
-        return " ".join(value.split())
-
-    def word(self, holder, name, path, allowed, default=None):
-        value = holder.get(name)
-        if value in (None, ""):
-            if default is None:
-                self.fault(path, None, "one of " + ", ".join(allowed))
-            return default
-        found = words.find_word(value, allowed) if isinstance(value, str) else None
-        if found is None:
-            self.fault(path, value, "one of " + ", ".join(allowed))
-        return found
-
-    def number(self, holder, name, path, low, high, unit, required=False, whole=False):
-        value = holder.get(name)
-        if value is None or (isinstance(value, str) and not value.strip()):
-            if required:
-                self.fault(path, None, _range_text(low, high, unit, whole))
-            return None
-        parsed = _as_number(value)
-        if parsed is None or not low <= parsed <= high or (whole and parsed != int(parsed)):
-            self.fault(path, value, _range_text(low, high, unit, whole))
-            return None
-        return int(parsed) if whole else parsed
-
-    def length(self, holder, name, path, units, low=SMALLEST_MM, high=LARGEST_MM, required=False):
-        value = holder.get(name)
-        expected = f"a length from {low:g} to {high:g} mm, such as 20, 19mm or 3/4 in"
-        if value is None or (isinstance(value, str) and not value.strip()):
-            if required:
-                self.fault(path, None, expected)
-            return None
-        if isinstance(value, str):
-            try:
-                parsed = parse_length_mm(value, units)
-            except ValueError:
-                self.fault(path, value, LENGTH_EXPECTED)
-                return None
-        else:
-            parsed = _as_number(value)
-        if parsed is None or not low <= parsed <= high:
-            self.fault(path, value, expected)
-            return None
-        return round(parsed, 4)
-
-
-def _as_number(value):
-    """A finite number from a number or typed text, else None. True and False are not numbers here."""
-    if isinstance(value, bool):
-        return None
-    if isinstance(value, str):
-        try:
-            value = float(value.strip().replace(",", "."))
-        except ValueError:
-            return None
-    if isinstance(value, (int, float)):
-        try:
-            value = float(value)
-        except OverflowError:
-            return None
-        return value if math.isfinite(value) else None
-    return None
-
-
-def _range_text(low, high, unit, whole):
-    kind = "a whole number" if whole else "a number"
-    return f"{kind} from {low:g} to {high:g}{' ' + unit if unit else ''}"
-
-
 def parse_job(data):
     """Job from a dictionary. InputErrors with every fault at once: field, value, what would be accepted."""
-    read = _Reader()
+    read = Reader()
     if not isinstance(data, dict):
         raise InputErrors([Fault("job", data, "an object with steel, part, aim and shop")])
     schema = data.get("schema", SCHEMA)
@@ -206,7 +138,9 @@ def parse_job(data):
         read.fault("schema", schema, SCHEMA)
     shop = read.section(data, "shop", "shop")
     units_holder = data if data.get("units") is not None else shop
-    units = read.word(units_holder, "units", "units" if units_holder is data else "shop.units", words.UNITS, "mm") or "mm"
+    units = (
+        read.word(units_holder, "units", "units" if units_holder is data else "shop.units", words.UNITS, "mm") or "mm"
+    )
     steel = _steel(read, data)
     part = _part(read, data, units)
     use, hardness = _aim(read, data)
@@ -222,8 +156,20 @@ def parse_job(data):
         read.fault("decided.medium", decided["medium"], "one of the baths in shop.baths")
     if read.faults:
         raise InputErrors(read.faults)
-    return Job(title=title or _default_title(use), quantity=quantity, part=part, use=use, hardness_HRC=hardness,
-               heat=heat, baths=baths, temper=temper, cold=cold, units=units, decided=decided, **steel)
+    return Job(
+        title=title or _default_title(use),
+        quantity=quantity,
+        part=part,
+        use=use,
+        hardness_HRC=hardness,
+        heat=heat,
+        baths=baths,
+        temper=temper,
+        cold=cold,
+        units=units,
+        decided=decided,
+        **steel,
+    )
 
 
 def _default_title(use):
@@ -238,8 +184,9 @@ def _steel(read, data):
     given = [key for key in ("grade", "chemistry", "unknown") if section.get(key) not in (None, "")]
     if len(given) != 1 or given == ["unknown"]:
         if section or not read.faults or all(fault.path != "steel" for fault in read.faults):
-            read.fault("steel", ", ".join(given) or None,
-                       "either a grade of the library or the chemistry of a certificate")
+            read.fault(
+                "steel", ", ".join(given) or None, "either a grade of the library or the chemistry of a certificate"
+            )
         return result
     if given == ["grade"]:
         row = words.find_row("grades", section["grade"]) if isinstance(section["grade"], str) else None
@@ -279,8 +226,9 @@ def _part(read, data, units):
         for name in needed + optional:
             high = LARGEST_LENGTH_MM if name == "length" else LARGEST_MM
             low = 0.1 if name == "edge" else SMALLEST_MM
-            value = read.length(typed, name, f"part.dimensions_mm.{name}", units, low=low, high=high,
-                                required=name in needed)
+            value = read.length(
+                typed, name, f"part.dimensions_mm.{name}", units, low=low, high=high, required=name in needed
+            )
             if value is not None:
                 dimensions[name] = value
         _check_geometry(read, shape, dimensions)
@@ -306,9 +254,11 @@ def _part(read, data, units):
 
 def _check_geometry(read, shape, d):
     """Geometry that cannot be: a bore wider than its tube, an edge thicker than its spine."""
+
     def smaller(small, large, what):
         if small in d and large in d and d[small] >= d[large]:
             read.fault(f"part.dimensions_mm.{small}", d[small], f"less than the {what} ({d[large]:g} mm)")
+
     if shape == "tube":
         smaller("bore", "diameter", "diameter")
     elif shape == "wedge":
@@ -332,7 +282,7 @@ def _aim(read, data):
     if typed not in (None, "", []):
         low, high = HARDNESS_RANGE_HRC
         expected = f"two numbers from {low:g} to {high:g} HRC, the lower first, such as [56, 59]"
-        pair = [_as_number(value) for value in typed] if isinstance(typed, (list, tuple)) else []
+        pair = [as_number(value) for value in typed] if isinstance(typed, (list, tuple)) else []
         if len(pair) != 2 or None in pair or not low <= pair[0] <= pair[1] <= high:
             read.fault("aim.hardness_HRC", typed, expected)
         else:
@@ -351,9 +301,13 @@ def _heat(read, shop):
     elif not isinstance(pyrometer, bool):
         read.fault("shop.heat.pyrometer", pyrometer, "true or false")
         pyrometer = False
-    return Heat(kind, read.number(section, "accuracy_C", "shop.heat.accuracy_C", 0, 150, "°C"),
-                read.number(section, "max_C", "shop.heat.max_C", 200, 1700, "°C"),
-                read.word(section, "atmosphere", "shop.heat.atmosphere", words.ATMOSPHERES, "air"), pyrometer)
+    return Heat(
+        kind,
+        read.number(section, "accuracy_C", "shop.heat.accuracy_C", 0, 150, "°C"),
+        read.number(section, "max_C", "shop.heat.max_C", 200, 1700, "°C"),
+        read.word(section, "atmosphere", "shop.heat.atmosphere", words.ATMOSPHERES, "air"),
+        pyrometer,
+    )
 
 
 def _baths(read, shop):
@@ -390,8 +344,12 @@ def _check_bath(read, path, row, temperature_C):
     """A bath must be liquid: below the boil of water, below the flash point of its oil."""
     flash = number(row["flash_C"])
     if flash is not None and temperature_C >= flash:
-        read.fault(f"{path}.temperature_C", temperature_C,
-                   f"below the flash point of {row['name']}, about {flash:g} °C; at most {flash - 28:.0f} °C to keep the margin")
+        read.fault(
+            f"{path}.temperature_C",
+            temperature_C,
+            f"below the flash point of {row['name']}, about {flash:g} °C; "
+            f"at most {flash - 28:.0f} °C to keep the margin",
+        )
     if row["kind"] == "water" and not -10 <= temperature_C <= 95:
         read.fault(f"{path}.temperature_C", temperature_C, "from -10 to 95 °C for a water bath")
 
@@ -399,8 +357,14 @@ def _check_bath(read, path, row, temperature_C):
 def _temper(read, shop):
     section = read.section(shop, "temper", "shop.temper")
     kind = read.word(section, "kind", "shop.temper.kind", words.TEMPERS) if section else None
-    largest = read.number(section, "max_C", "shop.temper.max_C", LOWEST_TEMPER_C, 1300,
-                          "°C (an oven that cannot reach 100 °C tempers nothing)")
+    largest = read.number(
+        section,
+        "max_C",
+        "shop.temper.max_C",
+        LOWEST_TEMPER_C,
+        1300,
+        "°C (an oven that cannot reach 100 °C tempers nothing)",
+    )
     if largest is None and kind:
         largest = next(number(row["max_default_C"]) for row in table("temper_ovens") if row["kind"] == kind)
     return TemperOven(kind, largest, read.number(section, "accuracy_C", "shop.temper.accuracy_C", 0, 100, "°C"))
@@ -413,8 +377,12 @@ def _decided(read, data):
     if not isinstance(section, dict):
         read.fault("decided", section, "an object with austenitize_C, medium, temper_C, temper_hold_min, temper_cycles")
         return {}
-    limits = {"austenitize_C": (650, 1300, "°C", False), "temper_C": (80, 750, "°C", False),
-              "temper_hold_min": (1, 6000, "min", False), "temper_cycles": (1, 6, "", True)}
+    limits = {
+        "austenitize_C": (650, 1300, "°C", False),
+        "temper_C": (80, 750, "°C", False),
+        "temper_hold_min": (1, 6000, "min", False),
+        "temper_cycles": (1, 6, "", True),
+    }
     found = {}
     for name in section:
         if name == "medium":
@@ -439,5 +407,6 @@ def _check_heat_reaches(read, grade, heat):
         return
     for row in table("temperatures"):
         if row["grade"] == grade and row["quantity"] == "austenitize_C" and heat.max_C < float(row["low"]):
-            read.fault("shop.heat.max_C", heat.max_C,
-                       f"at least {float(row['low']):g} °C, where {grade} begins to harden")
+            read.fault(
+                "shop.heat.max_C", heat.max_C, f"at least {float(row['low']):g} °C, where {grade} begins to harden"
+            )

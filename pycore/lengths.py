@@ -1,11 +1,14 @@
 """Lengths as people type them: 19, 19mm, 3/4, 1 1/2 in, 0.75"."""
+
 import re
 
 MM_PER_INCH = 25.4  # exact, international inch 1959
 _NUMBER = r"(?:\d+(?:[.,]\d+)?|[.,]\d+)"
 _SHAPE = re.compile(
     rf"^\s*(?:(?P<whole>\d+)[\s-]+)?(?:(?P<top>\d+)\s*/\s*(?P<bottom>\d+)|(?P<plain>{_NUMBER}))"
-    r"\s*(?P<unit>mm|cm|in|inch|inches|\"|″|”)?\s*$", re.IGNORECASE)
+    r"\s*(?P<unit>mm|cm|in|inch|inches|\"|″|”)?\s*$",
+    re.IGNORECASE,
+)
 EXPECTED = "a length such as 20, 19mm, 3/4 in or 1 1/2 in"
 
 

@@ -1,4 +1,5 @@
 """The closed lists of words a job may use, with the other spellings people type."""
+
 from pycore.data import number, table
 
 SHAPES = {
@@ -10,29 +11,95 @@ SHAPES = {
     "wedge": ("blade or wedge", ("edge", "spine", "width"), ("length",)),
     "taper": ("round taper", ("edge", "diameter", "length"), ()),
 }
-DIMENSION_NAMES = {"diameter": "diameter", "length": "length", "width": "width", "thickness": "thickness",
-                   "bore": "bore", "edge": "edge thickness", "spine": "spine thickness"}
-FEATURES = {"hole": "hole", "sharp-corner": "sharp inside corner", "section-step": "step in section",
-            "thread": "thread", "keyway": "keyway"}
+DIMENSION_NAMES = {
+    "diameter": "diameter",
+    "length": "length",
+    "width": "width",
+    "thickness": "thickness",
+    "bore": "bore",
+    "edge": "edge thickness",
+    "spine": "spine thickness",
+}
+FEATURES = {
+    "hole": "hole",
+    "sharp-corner": "sharp inside corner",
+    "section-step": "step in section",
+    "thread": "thread",
+    "keyway": "keyway",
+}
 ZONES = {"all": "hard all over", "edge": "hard at the edge", "tip": "hard at the tip"}
-CONDITIONS = {"annealed": "annealed", "normalized": "normalized", "forged": "forged", "cold-drawn": "cold drawn",
-              "hardened": "hardened before", "unknown": "condition unknown"}
-HEATS = {"kiln": "electric kiln", "gas-forge": "gas forge", "coal-forge": "coal forge", "salt": "salt bath",
-         "torch": "torch"}
-ATMOSPHERES = {"air": "air", "coated": "anti-scale coating", "foil": "foil wrap", "inert": "inert gas",
-               "reducing": "reducing flame"}
-TEMPERS = {"kitchen-oven": "kitchen oven", "toaster-oven": "toaster oven", "kiln": "electric kiln",
-           "salt": "salt bath", "torch": "torch, to colour", "residual-heat": "residual heat, to colour"}
+CONDITIONS = {
+    "annealed": "annealed",
+    "normalized": "normalized",
+    "forged": "forged",
+    "cold-drawn": "cold drawn",
+    "hardened": "hardened before",
+    "unknown": "condition unknown",
+}
+HEATS = {
+    "kiln": "electric kiln",
+    "gas-forge": "gas forge",
+    "coal-forge": "coal forge",
+    "salt": "salt bath",
+    "torch": "torch",
+}
+ATMOSPHERES = {
+    "air": "air",
+    "coated": "anti-scale coating",
+    "foil": "foil wrap",
+    "inert": "inert gas",
+    "reducing": "reducing flame",
+}
+TEMPERS = {
+    "kitchen-oven": "kitchen oven",
+    "toaster-oven": "toaster oven",
+    "kiln": "electric kiln",
+    "salt": "salt bath",
+    "torch": "torch, to colour",
+    "residual-heat": "residual heat, to colour",
+}
 COLDS = {"none": "none", "freezer": "household freezer", "dry-ice": "dry ice", "liquid-nitrogen": "liquid nitrogen"}
 AGITATIONS = {"still": "still", "moderate": "moved", "strong": "moved hard"}
 UNITS = {"mm": "mm", "in": "inches"}
-ELEMENTS = {"C": 2.0, "Mn": 2.5, "Si": 2.5, "Cr": 14.0, "Ni": 5.0, "Mo": 6.0, "V": 3.0, "W": 7.0, "Cu": 1.0,
-            "P": 0.1, "S": 0.4, "Al": 0.2, "B": 0.01, "Co": 12.0, "Nb": 0.5, "Ti": 0.5, "N": 0.3}
+ELEMENTS = {
+    "C": 2.0,
+    "Mn": 2.5,
+    "Si": 2.5,
+    "Cr": 14.0,
+    "Ni": 5.0,
+    "Mo": 6.0,
+    "V": 3.0,
+    "W": 7.0,
+    "Cu": 1.0,
+    "P": 0.1,
+    "S": 0.4,
+    "Al": 0.2,
+    "B": 0.01,
+    "Co": 12.0,
+    "Nb": 0.5,
+    "Ti": 0.5,
+    "N": 0.3,
+}
 OTHER_SPELLINGS = {
-    "oven": "kitchen-oven", "kitchen": "kitchen-oven", "domestic-oven": "kitchen-oven", "toaster": "toaster-oven",
-    "furnace": "kiln", "electric-kiln": "kiln", "gas": "gas-forge", "forge": "gas-forge", "coal": "coal-forge",
-    "charcoal-forge": "coal-forge", "salt-bath": "salt", "residual": "residual-heat", "normalised": "normalized",
-    "cold-drawn-bar": "cold-drawn", "dry ice": "dry-ice", "inch": "in", "inches": "in", "bar": "round", "blade": "wedge",
+    "oven": "kitchen-oven",
+    "kitchen": "kitchen-oven",
+    "domestic-oven": "kitchen-oven",
+    "toaster": "toaster-oven",
+    "furnace": "kiln",
+    "electric-kiln": "kiln",
+    "gas": "gas-forge",
+    "forge": "gas-forge",
+    "coal": "coal-forge",
+    "charcoal-forge": "coal-forge",
+    "salt-bath": "salt",
+    "residual": "residual-heat",
+    "normalised": "normalized",
+    "cold-drawn-bar": "cold-drawn",
+    "dry ice": "dry-ice",
+    "inch": "in",
+    "inches": "in",
+    "bar": "round",
+    "blade": "wedge",
 }
 
 

@@ -79,7 +79,7 @@ async function start({ lock, trees }) {
   for (const name of trees) lay(pyodide.FS, await part(name).promise);
   say({ kind: "phase", name: "core" });
   const api = pyodide.pyimport("pycore.api");
-  run = api.run;
+  run = api.run.copy(); // a proxy of its own: the module's is let go
   api.destroy();
   const versions = JSON.parse(pyodide.runPython(VERSIONS));
   say({ kind: "ready", versions: { ...versions, pyodide: pyodide.version } });

@@ -1,4 +1,5 @@
 """The tables of the house. Every row carries its source; nothing is computed here."""
+
 import csv
 import functools
 import json
@@ -7,14 +8,14 @@ import pathlib
 FOLDER = pathlib.Path(__file__).parent
 
 
-@functools.lru_cache(maxsize=None)
+@functools.cache
 def table(name):
     """Rows of `name`.csv as dictionaries of text, in file order."""
     with open(FOLDER / f"{name}.csv", encoding="utf-8", newline="") as file:
         return tuple(csv.DictReader(file))
 
 
-@functools.lru_cache(maxsize=None)
+@functools.cache
 def toml(name):
     """The contents of `name`.toml."""
     import tomllib  # only the cautions need it
@@ -28,7 +29,7 @@ def demo_job():
     return json.loads((FOLDER / "demo_job.json").read_text(encoding="utf-8"))
 
 
-@functools.lru_cache(maxsize=None)
+@functools.cache
 def columns(name, *wanted):
     """Numeric columns of a table as tuples, rows with a blank in any of them left out."""
     rows = [[row[w] for w in wanted] for row in table(name)]

@@ -1,9 +1,10 @@
 """Heat balance of a quench bath."""
+
 import numpy as np
 
 from pycore.physics.steel_properties import en_1993_1_2_enthalpy
 
-OIL_RULE_L_PER_KG = 8.35    # 1 US gal per lb, common practice; traced to 1921 (MacKenzie, Thermal Processing)
+OIL_RULE_L_PER_KG = 8.35  # 1 US gal per lb, common practice; traced to 1921 (MacKenzie, Thermal Processing)
 FLASH_MARGIN_K = 50 * 5 / 9  # 29 CFR 1910.126(g): alarm 50 °F below flash; a difference of 50 °F is 27.8 K
 
 

@@ -1,8 +1,9 @@
 """Words for the light of hot steel and for the film of tempering."""
+
 from pycore.data import table
 
-MAGNET_LETS_GO_C = 770.0        # Curie point of ferrite 769-770 °C
-FIRST_GLOW_C = 540.0            # common practice: just visible in subdued light (Stirling 1905: 525)
+MAGNET_LETS_GO_C = 770.0  # Curie point of ferrite 769-770 °C
+FIRST_GLOW_C = 540.0  # common practice: just visible in subdued light (Stirling 1905: 525)
 
 
 def _band(name, temperature_C, **only):

@@ -4,13 +4,14 @@ Nodes sit on the faces of the section (the outermost on the surface, with half a
 towards the surface. The unknown stepped is heat content, so that peaks of the specific heat lose no energy.
 Several cases (other baths, sections, furnaces) run side by side along a leading axis, each with its own step.
 """
+
 import numpy as np
 
 GEOMETRY_POWER = {"slab": 0, "cylinder": 1, "sphere": 2}
 NODES = 25
-LARGEST_CHANGE_K = 14.0       # change of the fastest node aimed at in one step
+LARGEST_CHANGE_K = 14.0  # change of the fastest node aimed at in one step
 SMALLEST_STEP_S, LARGEST_GROWTH = 1e-5, 1.6
-FIRST_STEP_FOURIER = 2e-4      # first step as a Fourier number: short, because it is first order
+FIRST_STEP_FOURIER = 2e-4  # first step as a Fourier number: short, because it is first order
 
 
 class Mesh:
@@ -19,9 +20,9 @@ class Mesh:
     def __init__(self, geometry, nodes=NODES, crowding=1.6):
         power = GEOMETRY_POWER[geometry]
         even = np.linspace(0.0, 1.0, nodes)
-        self.x = 1.0 - (1.0 - even) ** crowding          # crowded towards the surface
+        self.x = 1.0 - (1.0 - even) ** crowding  # crowded towards the surface
         edges = np.concatenate([[0.0], (self.x[1:] + self.x[:-1]) / 2, [1.0]])
-        self.volume = np.diff(edges ** (power + 1)) / (power + 1)   # per unit "surface area"
+        self.volume = np.diff(edges ** (power + 1)) / (power + 1)  # per unit "surface area"
         self.area = edges[1:-1] ** power
         self.gap = np.diff(self.x)
 
@@ -46,8 +47,20 @@ class History:
         return T[:, i - 1] * (1 - w) + T[:, i] * w
 
 
-def conduct(geometry, half_thickness_mm, material, start_C, boundary, *, until, end_s, nodes=NODES,
-            largest_change_K=LARGEST_CHANGE_K, first_step_s=None, max_steps=4000):
+def conduct(
+    geometry,
+    half_thickness_mm,
+    material,
+    start_C,
+    boundary,
+    *,
+    until,
+    end_s,
+    nodes=NODES,
+    largest_change_K=LARGEST_CHANGE_K,
+    first_step_s=None,
+    max_steps=4000,
+):
     """Temperatures in sections heated or cooled from outside.
 
     Inputs: geometry "slab" (cooled on both faces), "cylinder" or "sphere"; half_thickness_mm, half the
@@ -67,10 +80,12 @@ def conduct(geometry, half_thickness_mm, material, start_C, boundary, *, until, 
     R = np.atleast_1d(np.asarray(half_thickness_mm, float)) / 1000.0
     end = np.broadcast_to(np.asarray(end_s, float), R.shape).copy()
     cases = len(R)
-    T = np.array(np.broadcast_to(np.atleast_1d(start_C).reshape(-1, 1) if np.ndim(start_C) < 2 else start_C,
-                                 (cases, nodes)), float)
+    T = np.array(
+        np.broadcast_to(np.atleast_1d(start_C).reshape(-1, 1) if np.ndim(start_C) < 2 else start_C, (cases, nodes)),
+        float,
+    )
     H = material.heat_content(T)
-    volume = mesh.volume[None, :] * R[:, None] * material.density      # kg per m2 of surface
+    volume = mesh.volume[None, :] * R[:, None] * material.density  # kg per m2 of surface
     conductance = mesh.area[None, :] / (mesh.gap[None, :] * R[:, None])  # times k: W/m2K
     time = np.zeros(cases)
     step = np.full(cases, first_step_s or FIRST_STEP_FOURIER * float((R**2).min()) / 6e-6)
@@ -78,7 +93,7 @@ def conduct(geometry, half_thickness_mm, material, start_C, boundary, *, until, 
     times, temperatures = [time.copy()], [T.copy()]
     running = ~until(T) & (time < end)
     A = np.zeros((cases, nodes, nodes))
-    main, upper, lower = (A.reshape(cases, -1)[:, offset::nodes + 1] for offset in (0, 1, nodes))
+    main, upper, lower = (A.reshape(cases, -1)[:, offset :: nodes + 1] for offset in (0, 1, nodes))
     while running.any() and len(times) < max_steps:
         step = np.minimum(step, np.maximum(end - time, SMALLEST_STEP_S))
         if step_before is None:
@@ -87,7 +102,7 @@ def conduct(geometry, half_thickness_mm, material, start_C, boundary, *, until, 
             r = step / step_before
             a0, a1, beta = (1 + r) ** 2 / (1 + 2 * r), r**2 / (1 + 2 * r), (1 + r) / (1 + 2 * r)
             guess = T + r[:, None] * np.clip(T - T_before, -60, 60)
-        base = a0[:, None] * H - a1[:, None] * H_before                   # BDF2 with variable steps
+        base = a0[:, None] * H - a1[:, None] * H_before  # BDF2 with variable steps
         capacity = _effective_heat(material, T, guess)
         k = material.conductivity(guess)
         G = conductance * (k[:, 1:] + k[:, :-1]) / 2
@@ -97,8 +112,8 @@ def conduct(geometry, half_thickness_mm, material, start_C, boundary, *, until, 
         main[:, :-1] += G
         main[:, 1:] += G
         main[:, -1] += h
-        upper[:, :nodes - 1] = -G
-        lower[:, :nodes - 1] = -G
+        upper[:, : nodes - 1] = -G
+        lower[:, : nodes - 1] = -G
         right = volume * (base + capacity * guess - material.heat_content(guess)) / factor
         right[:, -1] += h * surroundings
         new = np.linalg.solve(A, right[:, :, None])[:, :, 0]
@@ -107,7 +122,7 @@ def conduct(geometry, half_thickness_mm, material, start_C, boundary, *, until, 
         gained[:, :-1] += flow
         gained[:, 1:] -= flow
         gained[:, -1] -= h * (new[:, -1] - surroundings)
-        H_new = base + factor * gained / volume                        # keeps the energy the step has moved
+        H_new = base + factor * gained / volume  # keeps the energy the step has moved
         T_new = material.temperature(H_new)
         change = np.abs(T_new - T).max(axis=1)
         hold = running[:, None]

@@ -1,11 +1,18 @@
 """Critical temperatures on heating, and the carbon that austenite can hold."""
+
 import numpy as np
 
 from pycore.data import columns
 
-ANDREWS_RANGE = {"C": (0.0, 0.6), "Mn": (0.0, 2.0), "Si": (0.0, 1.8), "Ni": (0.0, 5.0), "Cr": (0.0, 5.0),
-                 "Mo": (0.0, 1.0)}
-EUTECTOID_C_PCT = 0.76      # Gustafson 1985 assessment: 0.761 % at 727 °C
+ANDREWS_RANGE = {
+    "C": (0.0, 0.6),
+    "Mn": (0.0, 2.0),
+    "Si": (0.0, 1.8),
+    "Ni": (0.0, 5.0),
+    "Cr": (0.0, 5.0),
+    "Mo": (0.0, 1.0),
+}
+EUTECTOID_C_PCT = 0.76  # Gustafson 1985 assessment: 0.761 % at 727 °C
 EUTECTOID_TEMPERATURE_C = 727.0
 
 
@@ -34,8 +41,7 @@ def andrews_1965_Ac3_C(composition):
     Source: Andrews 1965, JISI 203, 721-727; the short form needs no P and Al analysis.
     """
     g = lambda e: _get(composition, e)  # noqa: E731
-    return (910 - 203 * np.sqrt(g("C")) - 15.2 * g("Ni") + 44.7 * g("Si") + 104 * g("V") + 31.5 * g("Mo")
-            + 13.1 * g("W"))
+    return 910 - 203 * np.sqrt(g("C")) - 15.2 * g("Ni") + 44.7 * g("Si") + 104 * g("V") + 31.5 * g("Mo") + 13.1 * g("W")
 
 
 def acm_Fe_C_C(C_pct):

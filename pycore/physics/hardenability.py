@@ -1,13 +1,22 @@
 """Hardenability of alloy steel by calculation: ideal diameter and the Jominy curve of ASTM A255."""
+
 import numpy as np
 
 from pycore.data import columns, number, table
 
 INCH_MM = 25.4
-A255_RANGE = {"C": (0.10, 0.70), "Mn": (0.50, 1.65), "Si": (0.15, 0.60), "Cr": (0.0, 1.35), "Ni": (0.0, 1.50),
-              "Mo": (0.0, 0.55), "Cu": (0.0, 0.35), "V": (0.0, 0.20)}      # ASTM A255-10, section 1.3
+A255_RANGE = {
+    "C": (0.10, 0.70),
+    "Mn": (0.50, 1.65),
+    "Si": (0.15, 0.60),
+    "Cr": (0.0, 1.35),
+    "Ni": (0.0, 1.50),
+    "Mo": (0.0, 0.55),
+    "Cu": (0.0, 0.35),
+    "V": (0.0, 0.20),
+}  # ASTM A255-10, section 1.3
 JOMINY_C_RANGE = (0.10, 0.65)
-GRAIN_FACTOR = 1.08      # about 8 % of DI a grain-size number; closed form of Grossmann's base-carbon table
+GRAIN_FACTOR = 1.08  # about 8 % of DI a grain-size number; closed form of Grossmann's base-carbon table
 
 
 def a255_carbon_factor(C_pct):
@@ -18,8 +27,13 @@ def a255_carbon_factor(C_pct):
     Source: ASTM A255, calculated hardenability, carbon factors (from memory; pieces join within 0.0011).
     """
     C = np.clip(np.asarray(C_pct, float), 0.0, 0.90)
-    pieces = (0.54 * C, 0.171 + 0.001 * C + 0.265 * C**2, 0.115 + 0.268 * C - 0.038 * C**2, 0.143 + 0.2 * C,
-              0.062 + 0.409 * C - 0.135 * C**2)
+    pieces = (
+        0.54 * C,
+        0.171 + 0.001 * C + 0.265 * C**2,
+        0.115 + 0.268 * C - 0.038 * C**2,
+        0.143 + 0.2 * C,
+        0.062 + 0.409 * C - 0.135 * C**2,
+    )
     return np.select([C <= 0.39, C <= 0.55, C <= 0.65, C <= 0.75], pieces[:4], pieces[4])
 
 
@@ -36,9 +50,17 @@ def a255_ideal_diameter_in(composition, grain_size=7.0):
     g = lambda e: np.asarray(composition.get(e, 0.0), float)  # noqa: E731
     Mn = g("Mn")
     manganese = np.where(Mn <= 1.20, 3.3333 * Mn + 1.0, 5.10 * Mn - 1.12)
-    return (a255_carbon_factor(g("C")) * manganese * (1 + 0.70 * g("Si")) * (1 + 0.363 * g("Ni"))
-            * (1 + 2.16 * g("Cr")) * (1 + 3.00 * g("Mo")) * (1 + 0.365 * g("Cu")) * (1 + 1.73 * g("V"))
-            * GRAIN_FACTOR ** (7.0 - np.asarray(grain_size, float)))
+    return (
+        a255_carbon_factor(g("C"))
+        * manganese
+        * (1 + 0.70 * g("Si"))
+        * (1 + 0.363 * g("Ni"))
+        * (1 + 2.16 * g("Cr"))
+        * (1 + 3.00 * g("Mo"))
+        * (1 + 0.365 * g("Cu"))
+        * (1 + 1.73 * g("V"))
+        * GRAIN_FACTOR ** (7.0 - np.asarray(grain_size, float))
+    )
 
 
 def a255_initial_hardness_HRC(C_pct):
@@ -67,7 +89,7 @@ def a255_dividing_factor(J_sixteenths, DI_in):
         value = sum((number(row[f"a{k}"]) or 0.0) * at**k for k in range(6)) if at < cutoff else 1.0
         stations.append(float(row["J_sixteenths"]))
         factors.append(max(1.0, value))
-    factors = np.maximum.accumulate(factors)          # the rows from memory cross a little near their cut-offs
+    factors = np.maximum.accumulate(factors)  # the rows from memory cross a little near their cut-offs
     return np.interp(J_sixteenths, stations, factors)
 
 
@@ -92,5 +114,6 @@ def jominy_distance_sixteenths(rate_704_C_per_s):
     """
     J, rate = columns("jominy_cooling", "J_sixteenths", "rate_C_s")
     order = np.argsort(rate)
-    return np.exp(np.interp(np.log(np.maximum(rate_704_C_per_s, 1e-9)), np.log(np.array(rate)[order]),
-                            np.log(np.array(J)[order])))
+    return np.exp(
+        np.interp(np.log(np.maximum(rate_704_C_per_s, 1e-9)), np.log(np.array(rate)[order]), np.log(np.array(J)[order]))
+    )

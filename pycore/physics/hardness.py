@@ -1,4 +1,5 @@
 """Hardness of the structures of steel, and the scales it is told in."""
+
 import numpy as np
 
 from pycore.data import columns
@@ -7,9 +8,16 @@ from pycore.data import columns
 # retained austenite counted apart (handbook values for W1, 1095, 52100; from memory).
 PLATEAU_C_PCT = (0.60, 0.70, 0.80, 0.90, 1.20)
 PLATEAU_HRC = (64.3, 65.4, 66.3, 66.8, 67.0)
-RETAINED_AUSTENITE_HV = 250.0   # 200-300 HV for high-carbon austenite (from memory)
-MAYNIER_RANGE = {"C": (0.1, 0.5), "Si": (0.0, 1.0), "Mn": (0.0, 2.0), "Ni": (0.0, 4.0), "Cr": (0.0, 3.0),
-                 "Mo": (0.0, 1.0), "V": (0.0, 0.2)}
+RETAINED_AUSTENITE_HV = 250.0  # 200-300 HV for high-carbon austenite (from memory)
+MAYNIER_RANGE = {
+    "C": (0.1, 0.5),
+    "Si": (0.0, 1.0),
+    "Mn": (0.0, 2.0),
+    "Ni": (0.0, 4.0),
+    "Cr": (0.0, 3.0),
+    "Mo": (0.0, 1.0),
+    "V": (0.0, 0.2),
+}
 # Hardness of pearlite in eutectoid steel against the temperature at which it formed: isothermal diagram of
 # 1080 (US Steel atlas; from memory, +-2 HRC).
 PEARLITE_FORMED_C = (480.0, 540.0, 580.0, 620.0, 650.0, 680.0, 700.0)
@@ -26,8 +34,11 @@ def HRC_to_HV(HRC):
     HRC = np.asarray(HRC, float)
     scale, HV = columns("e140", "HRC", "HV")
     order = np.argsort(scale)
-    return np.where(HRC < 20, (223 * HRC + 14500) / (100 - np.minimum(HRC, 99)),
-                    np.interp(HRC, np.array(scale)[order], np.array(HV)[order]))
+    return np.where(
+        HRC < 20,
+        (223 * HRC + 14500) / (100 - np.minimum(HRC, 99)),
+        np.interp(HRC, np.array(scale)[order], np.array(HV)[order]),
+    )
 
 
 def HV_to_HRC(HV):
@@ -40,7 +51,9 @@ def HV_to_HRC(HV):
     HV = np.asarray(HV, float)
     HRC, scale = columns("e140", "HRC", "HV")
     order = np.argsort(scale)
-    return np.where(HV < 238, (100 * HV - 14500) / (HV + 223), np.interp(HV, np.array(scale)[order], np.array(HRC)[order]))
+    return np.where(
+        HV < 238, (100 * HV - 14500) / (HV + 223), np.interp(HV, np.array(scale)[order], np.array(HRC)[order])
+    )
 
 
 def iso_18265_tensile_MPa(HV):
@@ -92,10 +105,26 @@ def maynier_1978_HV(composition, rate_700_C_per_h):
     C, Si, Mn, Ni, Cr, Mo, V = (g(e) for e in ("C", "Si", "Mn", "Ni", "Cr", "Mo", "V"))
     rate = np.log10(rate_700_C_per_h)
     martensite = 127 + 949 * C + 27 * Si + 11 * Mn + 8 * Ni + 16 * Cr + 21 * rate
-    bainite = (-323 + 185 * C + 330 * Si + 153 * Mn + 65 * Ni + 144 * Cr + 191 * Mo
-               + (89 + 53 * C - 55 * Si - 22 * Mn - 10 * Ni - 20 * Cr - 33 * Mo) * rate)
-    ferrite_pearlite = (42 + 223 * C + 53 * Si + 30 * Mn + 12.6 * Ni + 7 * Cr + 19 * Mo
-                        + (10 - 19 * Si + 4 * Ni + 8 * Cr + 130 * V) * rate)
+    bainite = (
+        -323
+        + 185 * C
+        + 330 * Si
+        + 153 * Mn
+        + 65 * Ni
+        + 144 * Cr
+        + 191 * Mo
+        + (89 + 53 * C - 55 * Si - 22 * Mn - 10 * Ni - 20 * Cr - 33 * Mo) * rate
+    )
+    ferrite_pearlite = (
+        42
+        + 223 * C
+        + 53 * Si
+        + 30 * Mn
+        + 12.6 * Ni
+        + 7 * Cr
+        + 19 * Mo
+        + (10 - 19 * Si + 4 * Ni + 8 * Cr + 130 * V) * rate
+    )
     return martensite, bainite, ferrite_pearlite
 
 
@@ -107,5 +136,3 @@ def pearlite_HV(formed_C):
     Source: isothermal transformation diagram of 1080 (US Steel atlas; from memory, +-2 HRC).
     """
     return np.interp(formed_C, PEARLITE_FORMED_C, PEARLITE_HV)
-
-

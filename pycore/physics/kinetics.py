@@ -1,15 +1,15 @@
 """What austenite becomes as it cools: ferrite, pearlite and bainite by kinetics with additivity."""
+
 import numpy as np
 
-R_CAL = 1.987                 # cal/molK
-KV_RANGE = {"C": (0.1, 0.8), "Mn": (0.0, 2.0), "Si": (0.0, 1.0), "Ni": (0.0, 4.0), "Cr": (0.0, 2.0),
-            "Mo": (0.0, 1.0)}
+R_CAL = 1.987  # cal/molK
+KV_RANGE = {"C": (0.1, 0.8), "Mn": (0.0, 2.0), "Si": (0.0, 1.0), "Ni": (0.0, 4.0), "Cr": (0.0, 2.0), "Mo": (0.0, 1.0)}
 EUTECTOID_C_PCT, FERRITE_C_PCT = 0.76, 0.02
 # In near-eutectoid steel what forms above about 500 °C is fine pearlite, not bainite (isothermal diagram of 1080, US
 # Steel atlas; from memory); the bainite speed there is counted as pearlite.
 NEAR_EUTECTOID_C_PCT, PEARLITE_DOWN_TO_C = 0.60, 500.0
-CARBIDE_FACTOR, CARBIDE_MN_PCT, CARBIDE_MN_TERM = 2.8, 0.30, 4.36      # see carbide_nucleation
-SEED = 1e-4                   # fraction from which growth is stepped; the time integral is finite down to zero
+CARBIDE_FACTOR, CARBIDE_MN_PCT, CARBIDE_MN_TERM = 2.8, 0.30, 4.36  # see carbide_nucleation
+SEED = 1e-4  # fraction from which growth is stepped; the time integral is finite down to zero
 
 
 def kirkaldy_venugopalan_1984_Bs_C(composition):
@@ -38,11 +38,14 @@ def kirkaldy_venugopalan_1984_speeds(composition, temperature_C, *, Ae3_C, Ae1_C
     T = np.asarray(temperature_C, float)
     RT = R_CAL * (T + 273.15)
     grains = 2 ** ((grain_size - 1) / 2)
-    ferrite = grains * np.maximum(Ae3_C - T, 0) ** 3 * np.exp(-23500 / RT) / (59.6 * Mn + 1.45 * Ni + 67.7 * Cr + 244 * Mo)
+    ferrite = (
+        grains * np.maximum(Ae3_C - T, 0) ** 3 * np.exp(-23500 / RT) / (59.6 * Mn + 1.45 * Ni + 67.7 * Cr + 244 * Mo)
+    )
     D = 1 / (np.exp(27500 / RT) + (0.01 * Cr + 0.52 * Mo) * np.exp(37000 / RT))
     pearlite = grains * np.maximum(Ae1_C - T, 0) ** 3 * D / (1.79 + 5.42 * (Cr + Mo + 4 * Mo * Ni))
-    bainite = (grains * np.maximum(Bs_C - T, 0) ** 2 * np.exp(-27500 / RT)
-               / (1e-4 * (2.34 + 10.1 * C + 3.8 * Cr + 19 * Mo)))
+    bainite = (
+        grains * np.maximum(Bs_C - T, 0) ** 2 * np.exp(-27500 / RT) / (1e-4 * (2.34 + 10.1 * C + 3.8 * Cr + 19 * Mo))
+    )
     return ferrite, pearlite, bainite
 
 
@@ -105,8 +108,7 @@ def growth(X, late=0.0, power=2 / 3):
     return X ** (power * (1 - X)) * np.maximum(1 - X, 0.0) ** (power * X) * np.exp(-late * X * X)
 
 
-def decompose(time_s, temperature_C, composition, *, Ae3_C, Ae1_C, Bs_C, Ms_C, grain_size=7.0,
-              nucleation=1.0):
+def decompose(time_s, temperature_C, composition, *, Ae3_C, Ae1_C, Bs_C, Ms_C, grain_size=7.0, nucleation=1.0):
     """Fractions formed along cooling curves.
 
     Inputs: time_s (steps,); temperature_C (places, steps), falling; composition of the austenite {element: wt %},
@@ -132,15 +134,21 @@ def decompose(time_s, temperature_C, composition, *, Ae3_C, Ae1_C, Bs_C, Ms_C, g
     if C >= NEAR_EUTECTOID_C_PCT:
         dP, dB = dP + dB * (middle > PEARLITE_DOWN_TO_C), dB * (middle <= PEARLITE_DOWN_TO_C)
     power = 2 / 3 * (1 - weight) + 0.4 * weight
-    late = max(0.0, sum(k * float(composition.get(e, 0.0)) for e, k in
-                        (("C", 1.9), ("Mn", 2.5), ("Ni", 0.9), ("Cr", 1.7), ("Mo", 4.0))) - 2.6)
+    late = max(
+        0.0,
+        sum(
+            k * float(composition.get(e, 0.0))
+            for e, k in (("C", 1.9), ("Mn", 2.5), ("Ni", 0.9), ("Cr", 1.7), ("Mo", 4.0))
+        )
+        - 2.6,
+    )
     XF, XP, XB, moment = (np.zeros(places) for _ in range(4))
     for i in np.flatnonzero((dF + dP + dB).max(axis=0) > 1e-6):
         left = np.maximum(1.0 - XF - XP - XB, 0.0)
-        room = 1.0 - XF                              # what pearlite and bainite can share
+        room = 1.0 - XF  # what pearlite and bainite can share
         F = dF[:, i] * growth(XF / most_F, power=power) * most_F * (XP < 0.01) if most_F > 0.01 else np.zeros(places)
         F = np.minimum(F, np.maximum(most_F - XF, 0.0))
-        taken = (XP + XB) / np.maximum(room, 1e-6)   # a second product grows into what the first has left
+        taken = (XP + XB) / np.maximum(room, 1e-6)  # a second product grows into what the first has left
         P = dP[:, i] * growth(taken, power=power) * room
         B = dB[:, i] * growth(taken, late * (1 - weight), power) * room
         scale = np.minimum(1.0, left / np.maximum(F + P + B, 1e-30))

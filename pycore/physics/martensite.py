@@ -1,10 +1,17 @@
 """Where martensite starts, and how much austenite is left."""
+
 import numpy as np
 
 MS_RANGE = {"C": (0.1, 0.6), "Mn": (0.0, 2.0), "Ni": (0.0, 5.0), "Cr": (0.0, 3.5), "Mo": (0.0, 1.0)}
-VAN_BOHEMEN_RANGE = {"C": (0.1, 1.9), "Mn": (0.0, 2.0), "Si": (0.0, 2.0), "Cr": (0.0, 2.0), "Ni": (0.0, 4.0),
-                     "Mo": (0.0, 1.0)}
-KM_RATE_PER_K = 0.0110      # Koistinen & Marburger 1959
+VAN_BOHEMEN_RANGE = {
+    "C": (0.1, 1.9),
+    "Mn": (0.0, 2.0),
+    "Si": (0.0, 2.0),
+    "Cr": (0.0, 2.0),
+    "Ni": (0.0, 4.0),
+    "Mo": (0.0, 1.0),
+}
+KM_RATE_PER_K = 0.0110  # Koistinen & Marburger 1959
 STEVEN_HAYNES_MF_OFFSET_K = 215.0  # Steven & Haynes 1956: Mf = Ms - 215 (+-15)
 
 
@@ -22,8 +29,16 @@ def andrews_1965_product_Ms_C(composition):
     """
     g = lambda e: _get(composition, e)  # noqa: E731
     C = g("C")
-    return (512 - 453 * C - 16.9 * g("Ni") + 15 * g("Cr") - 9.5 * g("Mo") + 217 * C**2 - 71.5 * C * g("Mn")
-            - 67.6 * C * g("Cr"))
+    return (
+        512
+        - 453 * C
+        - 16.9 * g("Ni")
+        + 15 * g("Cr")
+        - 9.5 * g("Mo")
+        + 217 * C**2
+        - 71.5 * C * g("Mn")
+        - 67.6 * C * g("Cr")
+    )
 
 
 def van_bohemen_2012_Ms_C(composition):
@@ -35,8 +50,15 @@ def van_bohemen_2012_Ms_C(composition):
     Source: van Bohemen 2012, Mater. Sci. Technol. 28, 487 (from memory).
     """
     g = lambda e: _get(composition, e)  # noqa: E731
-    return (565 - 31 * g("Mn") - 13 * g("Si") - 10 * g("Cr") - 18 * g("Ni") - 12 * g("Mo")
-            - 600 * (1 - np.exp(-0.96 * g("C"))))
+    return (
+        565
+        - 31 * g("Mn")
+        - 13 * g("Si")
+        - 10 * g("Cr")
+        - 18 * g("Ni")
+        - 12 * g("Mo")
+        - 600 * (1 - np.exp(-0.96 * g("C")))
+    )
 
 
 def martensite_start_C(composition):
@@ -48,8 +70,9 @@ def martensite_start_C(composition):
     Source: Andrews 1965; van Bohemen 2012. The two differ by at most about 5 °C at the join for plain and
     Cr steels, so the change-over is not smoothed.
     """
-    return np.where(_get(composition, "C") <= 0.6, andrews_1965_product_Ms_C(composition),
-                    van_bohemen_2012_Ms_C(composition))
+    return np.where(
+        _get(composition, "C") <= 0.6, andrews_1965_product_Ms_C(composition), van_bohemen_2012_Ms_C(composition)
+    )
 
 
 def koistinen_marburger_1959(Ms_C, temperature_C):

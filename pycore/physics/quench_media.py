@@ -1,17 +1,18 @@
 """Heat transfer from a hot surface to what it is quenched in."""
+
 import functools
 
 import numpy as np
 
 from pycore.data import number, table
 
-STEFAN_BOLTZMANN = 5.670374e-8   # W/m2K4, CODATA 2018
+STEFAN_BOLTZMANN = 5.670374e-8  # W/m2K4, CODATA 2018
 ZERO_C_IN_K = 273.15
-OXIDISED_EMISSIVITY = 0.8        # oxidised steel 125-600 °C: 0.78-0.82 (Madding / Mikaelyan emissivity tables)
-STILL_AIR_CONVECTION = 9.0       # W/m2K, small parts: 8-12 by Churchill & Chu 1975 (from memory)
-FAN_AIR_CONVECTION = 60.0        # W/m2K, 5 m/s over 25 mm by Churchill & Bernstein 1977 (from memory)
-PLATES_CONDUCTANCE = 2500.0      # W/m2K, clamped aluminium 2000-4000 (Incropera table 3.1; from memory)
-BOILING_BELOW_C = 100.0          # agitation multiplies the part of the curve that lies above the convection end
+OXIDISED_EMISSIVITY = 0.8  # oxidised steel 125-600 °C: 0.78-0.82 (Madding / Mikaelyan emissivity tables)
+STILL_AIR_CONVECTION = 9.0  # W/m2K, small parts: 8-12 by Churchill & Chu 1975 (from memory)
+FAN_AIR_CONVECTION = 60.0  # W/m2K, 5 m/s over 25 mm by Churchill & Bernstein 1977 (from memory)
+PLATES_CONDUCTANCE = 2500.0  # W/m2K, clamped aluminium 2000-4000 (Incropera table 3.1; from memory)
+BOILING_BELOW_C = 100.0  # agitation multiplies the part of the curve that lies above the convection end
 AGITATIONS = ("still", "moderate", "strong")
 
 
@@ -27,7 +28,7 @@ def radiation_coefficient(surface_C, surroundings_C, emissivity=OXIDISED_EMISSIV
     return emissivity * STEFAN_BOLTZMANN * (a + b) * (a * a + b * b)
 
 
-@functools.lru_cache(maxsize=None)
+@functools.cache
 def _curves(medium):
     rows = {}
     for row in table("boiling"):
@@ -38,7 +39,7 @@ def _curves(medium):
     return surface, np.array(baths), np.array([np.interp(surface, *zip(*sorted(rows[bath]))) for bath in baths])
 
 
-@functools.lru_cache(maxsize=None)
+@functools.cache
 def agitation_factor(medium, agitation):
     """How much faster a moved bath takes heat than a still one.
 

@@ -1,15 +1,20 @@
 """One-dimensional stand-ins for real sections: which round cools like a given flat or square."""
+
 import numpy as np
 
 BI = (0.0, 0.25, 0.5, 1.0, 2.0, 5.0, 10.0, 1000.0)
 # Equivalent round D = f x thickness, from equal first-mode decay at the same heat-transfer coefficient, by width
 # to thickness (1, 2, 4, infinite); Bi = h D / 2k of the round.
 ASPECT = (1.0, 2.0, 4.0, 1000.0)
-FACTOR = np.array([[1.000, 1.018, 1.032, 1.051, 1.071, 1.085, 1.087, 1.083],
-                   [1.333, 1.357, 1.373, 1.394, 1.408, 1.406, 1.394, 1.369],
-                   [1.600, 1.625, 1.638, 1.645, 1.630, 1.579, 1.540, 1.485],
-                   [2.000, 1.960, 1.930, 1.870, 1.790, 1.670, 1.610, 1.531]])
-DENSITY_KG_MM3 = 7.85e-6          # EN 1993-1-2 clause 3.2.2
+FACTOR = np.array(
+    [
+        [1.000, 1.018, 1.032, 1.051, 1.071, 1.085, 1.087, 1.083],
+        [1.333, 1.357, 1.373, 1.394, 1.408, 1.406, 1.394, 1.369],
+        [1.600, 1.625, 1.638, 1.645, 1.630, 1.579, 1.540, 1.485],
+        [2.000, 1.960, 1.930, 1.870, 1.790, 1.670, 1.610, 1.531],
+    ]
+)
+DENSITY_KG_MM3 = 7.85e-6  # EN 1993-1-2 clause 3.2.2
 
 
 def equivalent_round_mm(thickness_mm, width_mm, Bi=1.0):

@@ -1,10 +1,11 @@
 """Thermal properties of steel: on heating by EN 1993-1-2, in the quench as undercooled austenite."""
+
 import functools
 
 import numpy as np
 
 EN_RANGE_C = (20.0, 1200.0)
-EN_DENSITY_KG_M3 = 7850.0        # EN 1993-1-2 clause 3.2.2 (constant)
+EN_DENSITY_KG_M3 = 7850.0  # EN 1993-1-2 clause 3.2.2 (constant)
 AUSTENITE_DENSITY_KG_M3 = 7650.0  # C60-type quench-simulation set (Denis, Sjöström; from memory)
 
 
@@ -99,7 +100,7 @@ class Material:
         return np.interp(heat_J_kg, self._H, self._T)
 
 
-@functools.lru_cache(maxsize=None)
+@functools.cache
 def on_heating():
     """Material for heating. Inputs: none. Returns: Material (kg/m3, W/mK, J/kg; no shapes). Valid: 20 to 1200 °C.
 
@@ -108,7 +109,7 @@ def on_heating():
     return Material(EN_DENSITY_KG_M3, en_1993_1_2_conductivity, en_1993_1_2_specific_heat, en_1993_1_2_enthalpy)
 
 
-@functools.lru_cache(maxsize=None)
+@functools.cache
 def on_quenching():
     """Material for the quench. Inputs: none. Returns: Material (kg/m3, W/mK, J/kg). Valid: 0 to 1100 °C.
 
@@ -123,5 +124,5 @@ def constant(density_kg_m3, conductivity_W_mK, specific_heat_J_kgK):
     Inputs: density_kg_m3, conductivity_W_mK, specific_heat_J_kgK, scalars > 0. Returns: Material.
     Valid: any positive values. Raises: nothing. Source: definition.
     """
-    flat = lambda value: (lambda T: np.full_like(np.asarray(T, float), value))  # noqa: E731
+    flat = lambda value: lambda T: np.full_like(np.asarray(T, float), value)  # noqa: E731
     return Material(density_kg_m3, flat(conductivity_W_mK), flat(specific_heat_J_kgK))

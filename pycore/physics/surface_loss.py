@@ -1,10 +1,11 @@
 """What the fire takes from the skin: scale and carbon."""
+
 import numpy as np
 
-R_GAS = 8.314                 # J/molK
+R_GAS = 8.314  # J/molK
 SCALE_RANGE_C = (700.0, 1250.0)
 DECARB_RANGE_C = (760.0, 1200.0)
-ERF_95 = 1.386                # erf(1.386) = 0.95, so depth to 95 % of the carbon is 2 x 1.386 sqrt(D t)
+ERF_95 = 1.386  # erf(1.386) = 0.95, so depth to 95 % of the carbon is 2 x 1.386 sqrt(D t)
 
 
 def paidassi_scale_mm(temperature_C, time_min):

@@ -1,4 +1,5 @@
 """Hardness after tempering: time and temperature as one parameter, over a grade's published curve."""
+
 import functools
 
 import numpy as np
@@ -8,18 +9,28 @@ from pycore.data import table
 ZERO_C_IN_K = 273.15
 # HV after 1 h of martensite, least squares on Grange & Baughman 1956 (25 heats; open set Raiipa Technologies,
 # CC BY 4.0): HV = a0 + a1 C + a2 C2 + Mn m + Si s + Ni n + Cr r + Mo q + V v. Rows: °C, then the coefficients.
-GRANGE_BAUGHMAN_FIT = np.array([
-    [204.4, 316, 687, -239, 4, 28, -3, 28, 18, -60],
-    [260.0, 300, 584, -160, 0, 51, 1, 20, -6, -57],
-    [315.6, 273, 509, -148, 11, 74, 2, 28, -6, 2],
-    [371.1, 221, 518, -226, 27, 72, 1, 61, 37, -25],
-    [426.7, 193, 467, -199, 21, 53, 1, 61, 92, 46],
-    [482.2, 160, 437, -178, 22, 38, 3, 54, 129, 82],
-    [537.8, 143, 345, -115, 27, 30, 5, 54, 161, 166],
-    [593.3, 128, 301, -125, 28, 35, 5, 56, 186, 254],
-    [648.9, 150, 160, -38, 19, 31, 4, 59, 126, 103]])
-FIT_RANGE = {"C": (0.25, 0.82), "Mn": (0.3, 1.85), "Si": (0.05, 1.7), "Ni": (0.0, 3.4), "Cr": (0.0, 1.0),
-             "Mo": (0.0, 0.33), "V": (0.0, 0.17)}
+GRANGE_BAUGHMAN_FIT = np.array(
+    [
+        [204.4, 316, 687, -239, 4, 28, -3, 28, 18, -60],
+        [260.0, 300, 584, -160, 0, 51, 1, 20, -6, -57],
+        [315.6, 273, 509, -148, 11, 74, 2, 28, -6, 2],
+        [371.1, 221, 518, -226, 27, 72, 1, 61, 37, -25],
+        [426.7, 193, 467, -199, 21, 53, 1, 61, 92, 46],
+        [482.2, 160, 437, -178, 22, 38, 3, 54, 129, 82],
+        [537.8, 143, 345, -115, 27, 30, 5, 54, 161, 166],
+        [593.3, 128, 301, -125, 28, 35, 5, 56, 186, 254],
+        [648.9, 150, 160, -38, 19, 31, 4, 59, 126, 103],
+    ]
+)
+FIT_RANGE = {
+    "C": (0.25, 0.82),
+    "Mn": (0.3, 1.85),
+    "Si": (0.05, 1.7),
+    "Ni": (0.0, 3.4),
+    "Cr": (0.0, 1.0),
+    "Mo": (0.0, 0.33),
+    "V": (0.0, 0.17),
+}
 FIT_RANGE_C = (204.4, 648.9)
 
 
@@ -82,7 +93,7 @@ def grange_baughman_fit_HV(composition, temperature_C):
     return stack[i] * (1 - w) + stack[i + 1] * w
 
 
-@functools.lru_cache(maxsize=None)
+@functools.cache
 def grade_curve(grade):
     """A grade's published tempering curve.
 
@@ -96,6 +107,10 @@ def grade_curve(grade):
     if not rows:
         return None
     rows.sort(key=lambda row: float(row["temper_C"]))
-    return (np.array([float(r["temper_C"]) for r in rows]), np.array([float(r["HRC"]) for r in rows]),
-            float(rows[0]["hold_h"] or 1), float(rows[0]["cycles"] or 1),
-            "; ".join(dict.fromkeys(r["source"] for r in rows)))
+    return (
+        np.array([float(r["temper_C"]) for r in rows]),
+        np.array([float(r["HRC"]) for r in rows]),
+        float(rows[0]["hold_h"] or 1),
+        float(rows[0]["cycles"] or 1),
+        "; ".join(dict.fromkeys(r["source"] for r in rows)),
+    )

@@ -1,4 +1,5 @@
 """Ranges of validity a machine can read: each model names its own, the stages mark what lies outside."""
+
 import numpy as np
 
 

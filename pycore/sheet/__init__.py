@@ -2,7 +2,7 @@
 from .file import open_sheet, save_sheet, sheet_css, sheet_filename
 from .plaintext import sheet_text
 
-__all__ = ["render_sheet", "save_sheet", "open_sheet", "sheet_filename", "sheet_text", "sheet_css"]
+__all__ = ["open_sheet", "render_sheet", "save_sheet", "sheet_css", "sheet_filename", "sheet_text"]
 
 
 def render_sheet(plan):

@@ -7,6 +7,7 @@ import re
 
 from .heatline import draw_heat_line
 from .metrics import POINT_MM, count_lines, wrap
+from .words import WHOLE
 
 # Paper height less two margins of 10 mm and a little air.
 PAPERS = (("letter", 279.4 - 20 - 2), ("a4", 297 - 20 - 3))
@@ -17,7 +18,9 @@ SIZES = ((1, 11.5, 10, 1.0, 46), (2, 11, 10, 0.9, 42), (3, 10.5, 9.5, 0.8, 40), 
          (5, 9.5, 9, 0.55, 34), (6, 9.5, 9, 0.4, 32), (7, 9.5, 9, 0.35, 32))
 TWO_PAGES = 3                  # when nothing fits on one page, two pages in comfortable type
 TITLE_SIZES = ((28, 1), (24, 1), (20, 1), (17, 2), (14, 2), (12, 3))
-HEAD_MM, DO_MM, LOOK_MM, CARE_MM = 130, 62, 70, 119
+HEAD_MM, CARE_MM = 130, 119
+SPLITS_MM = (52, 56, 60, 64, 68)     # possible widths of the "do" column; "look for" takes the rest of
+DO_AND_LOOK_MM = 136
 LEADING = 1.2
 
 
@@ -38,39 +41,61 @@ def lines(text, size_pt, room_mm, bold=False):
     return count_lines([(plain(text), bold)], size_pt, room_mm)
 
 
+def whole(text):
+    """`text` with its short parts, which the page keeps on one line, held together."""
+    return " · ".join(part.replace(" ", "\xa0") if len(part) <= WHOLE else part for part in text.split(" · "))
+
+
+def steps_height(steps, size, do_mm):
+    """The height of all steps in mm when the "do" column is `do_mm` wide."""
+    number, bench_pt, _, pad, _ = size
+    bench, total = bench_pt * POINT_MM * LEADING, 0
+    for step in steps:
+        at = whole(" · ".join(part for part in (step["at_text"], step["time_text"]) if part))
+        runs = [(step["do"] + (" stop\xa0and\xa0check" if step["hold"] else ""), True)]
+        if number >= 3:
+            do = count_lines(runs + [(at, False)], bench_pt, do_mm)
+        else:
+            do = count_lines(runs, bench_pt, do_mm) + count_lines([(at, False)], bench_pt, do_mm)
+        see = " ▲\xa0" + "\xa0".join(step["cautions"]) if step["cautions"] else ""
+        look = count_lines([(step["look"] + see, False)], bench_pt, DO_AND_LOOK_MM - do_mm)
+        total += max(8, bench * max(do, look)) + 2 * pad + (0.45 if step["hold"] or see else 0.2)
+    return total
+
+
 def height_of(view, size, line_mm):
     """The sheet's height in mm at a size class, its parts in the order of the template."""
-    number, bench_pt, foot_pt, pad, _ = size
-    bench, foot, dense = bench_pt * POINT_MM * LEADING, foot_pt * POINT_MM * LEADING, number >= 5
-    title = view["title_pt"]
+    number, bench_pt, foot_pt, _, _ = size
+    foot, dense = foot_pt * POINT_MM * LEADING, number >= 4
+    title = min(view["title_pt"], 24) if dense else view["title_pt"]
     total = title * POINT_MM * 1.05 * lines(view["heading"], title, HEAD_MM, True) + 1
     total += 4.25 * lines(f"{view['summary']['steel']} · {view['summary']['part']}", 10, HEAD_MM)
     if view["framed"]:
-        total = max(total, 19.5) + 2.5 + 6 + foot * lines("  ".join([view["verdict_word"] + "xx"] + view["reasons"]), foot_pt, 178)
-        total += foot * sum(lines(f"– {row['what']} Gives {row['gives']}.", foot_pt, 172, True) for row in view["alternatives"])
-    else:
-        total = max(total + 4.25 * lines(" ".join(view["reasons"]), 10, HEAD_MM), 19.5) + 2.5
-    total += line_mm + 2 + 1 + (0.3 if dense else 4.6)
-    for step in view["steps"]:
-        at = " · ".join(part for part in (step["at_text"], step["time_text"]) if part)
-        runs = [(step["do"] + (" stop and check" if step["hold"] else ""), True)]
-        if number >= 3:
-            do = count_lines(runs + [(at, False)], bench_pt, DO_MM)
+        total = max(total, 19.5) + 2.5 + 6
+        total += foot * lines("  ".join(["xx" + view["verdict_word"]] + view["reasons"]), foot_pt, 178)
+        others = [[(f"– {row['what']}", True), (f"Gives {row['gives']}.", False)] for row in view["alternatives"]]
+        if dense:
+            total += foot * count_lines(sum(others, []), foot_pt, 176) if others else 0
         else:
-            do = count_lines(runs, bench_pt, DO_MM) + lines(at, bench_pt, DO_MM)
-        look = lines(step["look"] + (" ▲" + " B" * len(step["cautions"]) if step["cautions"] else ""), bench_pt, LOOK_MM)
-        total += max(8, bench * max(do, look)) + 2 * pad + (0.4 if step["hold"] else 0.2)
+            total += foot * sum(count_lines(runs, foot_pt, 174) for runs in others)
+    else:
+        reasons = view["reasons"][:1] if dense else view["reasons"]
+        total = max(total + 4.25 * lines(" ".join(reasons), 10, HEAD_MM), 19.5) + 2.5
+    total += line_mm + 2 + 1 + (0.3 if dense else 4.6)
+    total += min(steps_height(view["steps"], size, do_mm) for do_mm in SPLITS_MM)
     left = (4.9 if number < 6 else 0) + 26 + 4 + 3 * foot
     right = (4.9 if number < 6 else 0) + sum(
-        count_lines([(row["signal"].upper(), True), (f"{row['text']} {row['because'] if number < 7 else ''}", False)], foot_pt, CARE_MM) * foot + 0.6
-        for row in view["cautions"])
+        count_lines([(row["signal"].upper(), True), (f"{row['text']} {row['because'] if number < 7 else ''}", False)],
+                    foot_pt, CARE_MM) * foot + 0.6 for row in view["cautions"])
     total += max(left, right) + 1.8
     total += 1 + foot * lines("    ".join(f"{row['name']} {plain(row['text'])}" for row in view["facts"]
                                           if not (row["spare"] and dense)), foot_pt, 178, True)
-    if view["faults"]:
-        room = (186 - 4 * (len(view["faults"]) - 1)) / len(view["faults"])
-        total += 2.2 + foot + foot * max(
-            lines(row["then"] if dense and row["then"] else f"{row['cause']} {row['then']}", foot_pt, room) for row in view["faults"])
+    faults = view["faults"]
+    if faults and dense:
+        total += 2.2 + foot * count_lines(sum([[(row["sign"], True), (f"  {row['then'] or row['cause']}", False)] for row in faults], []), foot_pt, 184)
+    elif faults:
+        room = (186 - 4 * (len(faults) - 1)) / len(faults)
+        total += 2.2 + foot * max(lines(row["sign"], foot_pt, room, True) + lines(f"{row['cause']} {row['then']}", foot_pt, room) for row in faults)
     return total + 9.5 + 1.2 + 3.4 * (2 if view["marked"] or view["missing"] else 1)
 
 
@@ -94,4 +119,6 @@ def fit(plan, view, link_to):
         else:
             size = SIZES[TWO_PAGES - 1]
         view[paper] = size[0]
+        heights = {do_mm: steps_height(view["steps"], size, do_mm) for do_mm in SPLITS_MM}
+        view[paper + "_do"] = min(heights, key=lambda do_mm: (round(heights[do_mm], 1), abs(do_mm - 60)))
     view["heat_line"] = line((smallest or SIZES[TWO_PAGES - 1])[-1])[0]

@@ -177,11 +177,7 @@ def slopes_of(columns, first_mm):
     for before, column in zip([None] + columns, columns):
         if before is None:
             slopes.append(first_mm)
-        elif column.kind == "valley":
-            slopes.append(4)
-        elif column.kind == "preheat" or column.kind == "austenitize":
-            slopes.append(4)
-        elif column.kind == "cold" or before.kind == "cold":
+        elif column.kind == "valley" or column.kind == "preheat" or column.kind == "austenitize" or column.kind == "cold" or before.kind == "cold":
             slopes.append(4)
         elif before.kind == "temper":
             slopes.append(5 + 13 * before.again)

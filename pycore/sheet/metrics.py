@@ -81,7 +81,7 @@ def count_lines(runs, size_pt, room_mm):
     used, count = 0.0, 1
     for text, bold in runs:
         space = width_mm(" ", size_pt, bold)
-        for word in text.split():
+        for word in text.split(" "):
             word_mm = width_mm(word, size_pt, bold)
             if used and used + space + word_mm > room_mm:
                 count, used = count + 1, 0.0

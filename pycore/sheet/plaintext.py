@@ -1,7 +1,7 @@
 """The sheet for the terminal: plain text, eighty columns."""
 import textwrap
 
-from .words import HRC_range, NOT_COMPUTED, clean, is_number, number, span
+from .words import NOT_COMPUTED, HRC_range, clean, is_number, number, span
 
 COLUMNS = 80
 VERDICTS = {"reachable": "WITHIN REACH", "borderline": "BORDERLINE", "out-of-reach": "OUT OF REACH"}

@@ -6,7 +6,7 @@ FOLDER = pathlib.Path(__file__).parent
 NAMES = ("sheet.html.j2", "saved.html.j2")
 
 
-@functools.lru_cache(maxsize=None)
+@functools.cache
 def environment():
     """Jinja2 with escaping always on; a name the view lacks is an error, not a blank."""
     import jinja2
@@ -23,7 +23,7 @@ def module_name(name):
     return "_compiled_" + name.split(".", 1)[0]
 
 
-@functools.lru_cache(maxsize=None)
+@functools.cache
 def template(name):
     """The template, from its compiled module when the build has made one, else from its text."""
     import importlib

@@ -10,7 +10,7 @@ from . import svg
 from .fit import fit, title_size
 from .heatline import stations_of
 from .section import draw_section, nothing_to_draw
-from .words import (NOT_COMPUTED, HRC_middle, HRC_range, both_units, clean, fahrenheit, is_number, number, span)
+from .words import NOT_COMPUTED, WHOLE, HRC_middle, HRC_range, both_units, clean, fahrenheit, is_number, number, span
 
 PRINTED_CAUTIONS = 6
 VERDICTS = {"reachable": "Within reach", "borderline": "Borderline", "out-of-reach": "Out of reach"}
@@ -89,7 +89,7 @@ class Reader:
         text = ("~" if outside and not text.startswith("~") else "") + text
         if together:
             words = Markup(' <span class="dot">·</span> ').join(
-                Markup('<span class="whole">{}</span>').format(part) if len(part) <= 26 else escape(part)
+                Markup('<span class="whole">{}</span>').format(part) if len(part) <= WHOLE else escape(part)
                 for part in text.split(" · "))
         else:
             words = escape(text)

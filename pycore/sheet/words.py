@@ -2,6 +2,7 @@
 import math
 
 NOT_COMPUTED = "not computed"
+WHOLE = 19        # a part of a line of this many characters or fewer is never broken
 
 
 def is_number(value):

@@ -1,4 +1,5 @@
 """Into the fire: how hot, how long to heat through, how long to soak, and what the skin loses."""
+
 from dataclasses import dataclass
 
 import numpy as np
@@ -9,14 +10,14 @@ from pycore.physics.quench_media import radiation_coefficient
 from pycore.stages.notes import mark, nearest, note, rounded
 
 ROOM_C = 20.0
-EVEN_WITHIN_K = 10.0          # the centre counts as through when it is this close (common practice)
-FORGE_HOTTER_BY_K = 120.0     # a forge's fire stands above the part; it is throttled when the part is there
+EVEN_WITHIN_K = 10.0  # the centre counts as through when it is this close (common practice)
+FORGE_HOTTER_BY_K = 120.0  # a forge's fire stands above the part; it is throttled when the part is there
 LONGEST_HEAT_S = 6 * 3600.0
-SCALE_STARTS_C = 700.0        # lower end of the parabolic law's range
-METAL_PER_SCALE = 0.5         # iron lost per thickness of scale; Pilling-Bedworth ratio about 1.7-2
-COLOUR_ERROR_C = 40.0         # judging by shade and magnet: ±30-50 °C (common practice)
-PREHEAT_HOLD_MIN = 10.0       # common practice: until even, at least 10 minutes
-SOAK_BY_FAMILY = {"hypo": (5.0, 10.0, 30.0), "hyper": (5.0, 10.0, 20.0)}   # common practice where no sheet exists
+SCALE_STARTS_C = 700.0  # lower end of the parabolic law's range
+METAL_PER_SCALE = 0.5  # iron lost per thickness of scale; Pilling-Bedworth ratio about 1.7-2
+COLOUR_ERROR_C = 40.0  # judging by shade and magnet: ±30-50 °C (common practice)
+PREHEAT_HOLD_MIN = 10.0  # common practice: until even, at least 10 minutes
+SOAK_BY_FAMILY = {"hypo": (5.0, 10.0, 30.0), "hyper": (5.0, 10.0, 20.0)}  # common practice where no sheet exists
 
 
 @dataclass(frozen=True)
@@ -55,12 +56,20 @@ def heat_up(section, job, target_C, start_C=ROOM_C):
     source_C = target_C + (FORGE_HOTTER_BY_K if job.heat.kind in ("gas-forge", "coal-forge", "torch") else 0.0)
 
     def boundary(surface_C, time_s):
-        around = np.where(surface_C >= target_C, target_C, source_C)   # the smith throttles: never above target
+        around = np.where(surface_C >= target_C, target_C, source_C)  # the smith throttles: never above target
         return convection + radiation_coefficient(surface_C, around, emissivity), around
 
     return conduction.conduct(
-        section.geometry, section.half_thickness_mm, steel_properties.on_heating(), start_C, boundary,
-        until=lambda T: T[:, 0] >= target_C - EVEN_WITHIN_K, end_s=LONGEST_HEAT_S, largest_change_K=25.0, nodes=15)
+        section.geometry,
+        section.half_thickness_mm,
+        steel_properties.on_heating(),
+        start_C,
+        boundary,
+        until=lambda T: T[:, 0] >= target_C - EVEN_WITHIN_K,
+        end_s=LONGEST_HEAT_S,
+        largest_change_K=25.0,
+        nodes=15,
+    )
 
 
 def austenitize(job, steel, section):
@@ -69,7 +78,11 @@ def austenitize(job, steel, section):
     target = job.decided.get("austenitize_C", usual)
     decided = "austenitize_C" in job.decided
     if decided and not low <= target <= high:
-        marks.append(mark("austenitize.temperature_C", f"decided {target:g} °C is outside the published range {low:g}-{high:g} °C"))
+        marks.append(
+            mark(
+                "austenitize.temperature_C", f"decided {target:g} °C is outside the published range {low:g}-{high:g} °C"
+            )
+        )
     fire = furnace_row(job.heat.kind)
     if job.heat.pyrometer:
         measured_by = "pyrometer"
@@ -80,23 +93,44 @@ def austenitize(job, steel, section):
     time_s, temperature = history.case()
     heat_up_min = float(time_s[-1]) / 60.0
     if temperature[-1, 0] < target - EVEN_WITHIN_K - 1:
-        marks.append(mark("austenitize.heat_up_min", "not through within six hours; the fire is too weak for this section"))
-    soak = steel.temperatures.get("soak_min") or (*SOAK_BY_FAMILY["hyper" if steel.Acm_C else "hypo"], "common practice")
+        marks.append(
+            mark("austenitize.heat_up_min", "not through within six hours; the fire is too weak for this section")
+        )
+    soak = steel.temperatures.get("soak_min") or (
+        *SOAK_BY_FAMILY["hyper" if steel.Acm_C else "hypo"],
+        "common practice",
+    )
     soak_min = soak[1] if job.heat.pyrometer else soak[0]
     soak_max = soak[2]
     hot = float(np.trapezoid(temperature[:, -1] > SCALE_STARTS_C, time_s)) / 60.0 + soak_min
     air = atmosphere_row(job.heat.atmosphere)
     scale = float(surface_loss.paidassi_scale_mm(target, hot)) * number(air["scale_factor"])
-    decarb = float(surface_loss.decarburized_depth_mm(target, hot, steel.composition["C"])) * number(air["decarb_factor"])
+    decarb = float(surface_loss.decarburized_depth_mm(target, hot, steel.composition["C"])) * number(
+        air["decarb_factor"]
+    )
     stock = max(0.05, np.ceil((decarb + METAL_PER_SCALE * scale) / 0.05) * 0.05)
     preheat = _preheats(job, steel)
     total = heat_up_min + soak_min + sum(step["hold_min"] for step in preheat)
     colour = colours.heat_colour(target) or "no glow"
     why = _why(job, steel, section, target, decided, soak, hot, fire, air, error)
-    return Austenitize(rounded(target, 0), (rounded(low, 0), rounded(high, 0)), preheat, rounded(heat_up_min),
-                       rounded(soak_min), rounded(soak_max), rounded(total), rounded(scale, 3), rounded(decarb, 2),
-                       rounded(stock, 2), colour, colours.MAGNET_LETS_GO_C if not steel.Acm_C else rounded(steel.Ac1_C, 0),
-                       measured_by, rounded(error), tuple(marks), why)
+    return Austenitize(
+        rounded(target, 0),
+        (rounded(low, 0), rounded(high, 0)),
+        preheat,
+        rounded(heat_up_min),
+        rounded(soak_min),
+        rounded(soak_max),
+        rounded(total),
+        rounded(scale, 3),
+        rounded(decarb, 2),
+        rounded(stock, 2),
+        colour,
+        colours.MAGNET_LETS_GO_C if not steel.Acm_C else rounded(steel.Ac1_C, 0),
+        measured_by,
+        rounded(error),
+        tuple(marks),
+        why,
+    )
 
 
 def _preheats(job, steel):
@@ -113,21 +147,40 @@ def _why(job, steel, section, target, decided, soak, hot_min, fire, air, error):
     known = steel.temperatures.get("austenitize_C")
     source = known[3] if known else "common practice: 30-60 K above Ac3, or 45-75 K above Ac1 for hypereutectoid steel"
     return {
-        "austenitize.temperature_C": note("Austenitizing temperature", "decided by you" if decided else
-                                          "published range of the grade" if known else "rule of the trade",
-                                          f"Ac1 {steel.Ac1_C:g} °C", source,
-                                          f"{steel.austenitize_C[0]:g}-{steel.austenitize_C[2]:g} °C",
-                                          steel.austenitize_C[0] <= target <= steel.austenitize_C[2]),
-        "austenitize.heat_up_min": note("Time to heat through", "transient conduction, finite volumes, EN 1993-1-2 properties with latent heat",
-                                        f"{part}; {fire['name']}, {target:g} °C; one piece, heated from all sides",
-                                        f"EN 1993-1-2:2005 cl. 3.4.1; {fire['source']}", "20-1200 °C"),
+        "austenitize.temperature_C": note(
+            "Austenitizing temperature",
+            "decided by you" if decided else "published range of the grade" if known else "rule of the trade",
+            f"Ac1 {steel.Ac1_C:g} °C",
+            source,
+            f"{steel.austenitize_C[0]:g}-{steel.austenitize_C[2]:g} °C",
+            steel.austenitize_C[0] <= target <= steel.austenitize_C[2],
+        ),
+        "austenitize.heat_up_min": note(
+            "Time to heat through",
+            "transient conduction, finite volumes, EN 1993-1-2 properties with latent heat",
+            f"{part}; {fire['name']}, {target:g} °C; one piece, heated from all sides",
+            f"EN 1993-1-2:2005 cl. 3.4.1; {fire['source']}",
+            "20-1200 °C",
+        ),
         "austenitize.soak_min": note("Soak", "hold after the centre is within 10 K", steel.name, soak[3]),
-        "austenitize.scale_mm": note("Scale", "parabolic oxidation of iron, Païdassi", f"{target:g} °C, {hot_min:.0f} min above 700 °C, {air['name']}",
-                                     "Chen & Yuen 2003, Oxid. Met. 59 (from memory); " + air["source"], "700-1250 °C"),
-        "austenitize.decarb_mm": note("Decarburized depth", "Fick's law, bare surface; Tibbetts diffusivity",
-                                      f"{target:g} °C, {hot_min:.0f} min above 700 °C, {air['name']}",
-                                      "Tibbetts 1980 (from memory); " + air["source"], "an upper bound"),
-        "austenitize.error_C": note("Error of the heat", "instrument" if job.heat.pyrometer else "shade and magnet",
-                                    f"±{error:g} °C", "as stated" if job.heat.accuracy_C is not None and job.heat.pyrometer
-                                    else "common practice"),
+        "austenitize.scale_mm": note(
+            "Scale",
+            "parabolic oxidation of iron, Païdassi",
+            f"{target:g} °C, {hot_min:.0f} min above 700 °C, {air['name']}",
+            "Chen & Yuen 2003, Oxid. Met. 59 (from memory); " + air["source"],
+            "700-1250 °C",
+        ),
+        "austenitize.decarb_mm": note(
+            "Decarburized depth",
+            "Fick's law, bare surface; Tibbetts diffusivity",
+            f"{target:g} °C, {hot_min:.0f} min above 700 °C, {air['name']}",
+            "Tibbetts 1980 (from memory); " + air["source"],
+            "an upper bound",
+        ),
+        "austenitize.error_C": note(
+            "Error of the heat",
+            "instrument" if job.heat.pyrometer else "shade and magnet",
+            f"±{error:g} °C",
+            "as stated" if job.heat.accuracy_C is not None and job.heat.pyrometer else "common practice",
+        ),
     }

@@ -1,4 +1,5 @@
 """Facts about a plan that cautions hang on, worked out once. Their meanings stand in data/cautions.toml."""
+
 from pycore.physics.bath import FLASH_MARGIN_K
 
 
@@ -20,7 +21,9 @@ def facts_of(job, steel, section, heat, quenched, cold, temper, aim_HRC, use):
         "air-quench": kind == "gas",
         "plates": kind == "plates",
         "near-flash": kind == "oil" and (quenched.flash_C is None or hottest_bath > quenched.flash_C - FLASH_MARGIN_K),
-        "bath-too-small": bool(quenched.volume_L and quenched.volume_needed_L and quenched.volume_L < quenched.volume_needed_L),
+        "bath-too-small": bool(
+            quenched.volume_L and quenched.volume_needed_L and quenched.volume_L < quenched.volume_needed_L
+        ),
         "partial-quench": part.zone != "all",
         "coal-forge": job.heat.kind == "coal-forge",
         "gas-forge": job.heat.kind == "gas-forge",
@@ -50,8 +53,9 @@ def facts_of(job, steel, section, heat, quenched, cold, temper, aim_HRC, use):
         "untempered": expected >= 50,
         "temper-over-260": T > 260,
         "tempered-martensite-embrittlement": 250 <= T <= 400 and C <= 0.7 and Cr <= 4,
-        "temper-embrittlement": 375 <= T <= 575 and steel.composition.get("Mo", 0.0) < 0.2 and (
-            (steel.composition.get("Mn", 0.0) > 0.6 and (Cr > 0.2 or Ni > 0.2)) or Cr > 1 or Ni > 1),
+        "temper-embrittlement": 375 <= T <= 575
+        and steel.composition.get("Mo", 0.0) < 0.2
+        and ((steel.composition.get("Mn", 0.0) > 0.6 and (Cr > 0.2 or Ni > 0.2)) or Cr > 1 or Ni > 1),
         "cold-freezer": cold is not None and job.cold == "freezer",
         "dry-ice": cold is not None and job.cold == "dry-ice",
         "liquid-nitrogen": cold is not None and job.cold == "liquid-nitrogen",

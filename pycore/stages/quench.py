@@ -1,4 +1,5 @@
 """From the fire to the bath and out of it: which bath, how fast, when to take the part out, what it becomes."""
+
 from dataclasses import dataclass
 
 import numpy as np
@@ -12,15 +13,15 @@ from pycore.stages.notes import mark, note, rounded
 from pycore.stages.risk import crack_risk
 
 ROOM_C = 20.0
-PLACES = (1.0, 0.95, 0.9, 0.8, 0.7, 0.6, 0.5, 0.4, 0.3, 0.15, 0.0)   # relative distance from the centre
+PLACES = (1.0, 0.95, 0.9, 0.8, 0.7, 0.6, 0.5, 0.4, 0.3, 0.15, 0.0)  # relative distance from the centre
 SURFACE, MIDRADIUS, CENTRE = 0, PLACES.index(0.5), len(PLACES) - 1
-TRANSFER_CAP_S = {"water": 3.0, "oil": 5.0, "plates": 10.0, "gas": 20.0}     # common practice
-OUT_C = {"water": 50.0, "oil": 65.0, "plates": 50.0, "gas": 60.0}           # hand-warm; supplier sheets 50-65 °C
+TRANSFER_CAP_S = {"water": 3.0, "oil": 5.0, "plates": 10.0, "gas": 20.0}  # common practice
+OUT_C = {"water": 50.0, "oil": 65.0, "plates": 50.0, "gas": 60.0}  # hand-warm; supplier sheets 50-65 °C
 OUT_ABOVE_BATH_K = 10.0
-ENTRY_ABOVE_AC1_K, ENTRY_BELOW_AC3_K = 20.0, 15.0    # common practice: enter above about Ac1 + 20-30 K
-ALLOWED_RISE_K = {"water": 10.0, "oil": 38.0}        # oil: 1 US gal/lb rule; water: common practice
+ENTRY_ABOVE_AC1_K, ENTRY_BELOW_AC3_K = 20.0, 15.0  # common practice: enter above about Ac1 + 20-30 K
+ALLOWED_RISE_K = {"water": 10.0, "oil": 38.0}  # oil: 1 US gal/lb rule; water: common practice
 LONGEST_QUENCH_S = 5 * 3600.0
-HARDER_THAN_AIM_HRC = 1.0       # what tempering needs to come down from, above the middle of the aim
+HARDER_THAN_AIM_HRC = 1.0  # what tempering needs to come down from, above the middle of the aim
 WATER_HOTTEST_C = 95.0
 BATH_ORDER = ("still-air", "fan-air", "plates", "canola", "medium-oil", "fast-oil", "water", "brine")  # mildest first
 
@@ -45,8 +46,8 @@ class Quench:
     crack_risk: dict
     others: tuple
     time_s: np.ndarray
-    curves_C: np.ndarray          # (places, steps)
-    structure: object             # Structure, or None where no data hold
+    curves_C: np.ndarray  # (places, steps)
+    structure: object  # Structure, or None where no data hold
     marks: tuple
     why: dict
 
@@ -59,7 +60,12 @@ def transfer_limit_s(steel, section, start_C):
     lowest = min(lowest, start_C - 5.0)
     T = np.linspace(lowest, start_C, 40)
     flux = quench_media.air_coefficient(T) * (T - ROOM_C)
-    heat = steel_properties.AUSTENITE_DENSITY_KG_M3 * steel_properties.austenite_specific_heat(T) * section.thinnest_mm / 2000.0
+    heat = (
+        steel_properties.AUSTENITE_DENSITY_KG_M3
+        * steel_properties.austenite_specific_heat(T)
+        * section.thinnest_mm
+        / 2000.0
+    )
     return float(np.trapezoid(heat / flux, T)), lowest
 
 
@@ -69,8 +75,10 @@ def _air(surface_C, time_s):
 
 def _cool(section, start, baths, kinds, working_C, out_C):
     """Cooling in every bath at once, from the profile at bath entry."""
-    curves = [quench_media.quench_coefficient(bath.medium, kind, T, bath.agitation)
-              for bath, kind, T in zip(baths, kinds, working_C)]
+    curves = [
+        quench_media.quench_coefficient(bath.medium, kind, T, bath.agitation)
+        for bath, kind, T in zip(baths, kinds, working_C)
+    ]
     grid = np.linspace(-20.0, 1300.0, 331)
     tables = np.array([np.interp(grid, *curve) for curve in curves])
     index, around = np.arange(len(baths)), np.array(working_C)
@@ -82,10 +90,16 @@ def _cool(section, start, baths, kinds, working_C, out_C):
         return tables[index, i] * (1 - w) + tables[index, i + 1] * w, around
 
     profiles = np.broadcast_to(start, (len(baths), start.shape[-1]))
-    return conduction.conduct(section.geometry, np.full(len(baths), section.half_thickness_mm),
-                              steel_properties.on_quenching(), profiles, boundary,
-                              until=lambda T: T.max(axis=1) <= np.array(out_C), end_s=LONGEST_QUENCH_S,
-                              largest_change_K=18.0)
+    return conduction.conduct(
+        section.geometry,
+        np.full(len(baths), section.half_thickness_mm),
+        steel_properties.on_quenching(),
+        profiles,
+        boundary,
+        until=lambda T: T.max(axis=1) <= np.array(out_C),
+        end_s=LONGEST_QUENCH_S,
+        largest_change_K=18.0,
+    )
 
 
 def _hardens_mm(steel, kind):
@@ -105,25 +119,40 @@ def quench(job, steel, section, heat, aim_HRC):
     start_C = heat.temperature_C
     limit_s, lowest_C = transfer_limit_s(steel, section, start_C)
     if steel.hardening == "air":
-        limit_s = max(limit_s, 60.0)                       # air-hardening steel does not mind the walk
+        limit_s = max(limit_s, 60.0)  # air-hardening steel does not mind the walk
     rises, needs = [], []
     for bath, row in zip(baths, rows):
         rise = need = None
         if words.is_liquid(row):
             density, heat_capacity = number(row["density_kg_L"]), number(row["heat_capacity_kJ_kgK"])
             out = max(OUT_C[row["kind"]], bath.temperature_C + OUT_ABOVE_BATH_K)
-            need = float(bath_physics.volume_needed_L(section.hot_mass_kg, start_C, out, ALLOWED_RISE_K[row["kind"]],
-                                                      density, heat_capacity))
+            need = float(
+                bath_physics.volume_needed_L(
+                    section.hot_mass_kg, start_C, out, ALLOWED_RISE_K[row["kind"]], density, heat_capacity
+                )
+            )
             if bath.volume_L is not None:
-                rise = float(bath_physics.bath_rise_K(section.hot_mass_kg, start_C, out, bath.volume_L, density, heat_capacity))
+                rise = float(
+                    bath_physics.bath_rise_K(section.hot_mass_kg, start_C, out, bath.volume_L, density, heat_capacity)
+                )
         rises.append(rise)
         needs.append(need)
-    working = [min(bath.temperature_C + (rise or 0.0) / 2, WATER_HOTTEST_C if kind == "water" else 400.0)
-               for bath, rise, kind in zip(baths, rises, kinds)]
+    working = [
+        min(bath.temperature_C + (rise or 0.0) / 2, WATER_HOTTEST_C if kind == "water" else 400.0)
+        for bath, rise, kind in zip(baths, rises, kinds)
+    ]
     out_C = [max(OUT_C[kind], T + OUT_ABOVE_BATH_K) for kind, T in zip(kinds, working)]
     walk_s = min(limit_s, min(TRANSFER_CAP_S[kind] for kind in kinds))
-    walk = conduction.conduct(section.geometry, section.half_thickness_mm, steel_properties.on_quenching(), start_C, _air,
-                              until=lambda T: np.zeros(len(T), bool), end_s=walk_s, largest_change_K=18.0)
+    walk = conduction.conduct(
+        section.geometry,
+        section.half_thickness_mm,
+        steel_properties.on_quenching(),
+        start_C,
+        _air,
+        until=lambda T: np.zeros(len(T), bool),
+        end_s=walk_s,
+        largest_change_K=18.0,
+    )
     entry = walk.temperature_C[:, -1, :]
     history = _cool(section, entry, baths, kinds, working, out_C)
     results = []
@@ -131,17 +160,24 @@ def quench(job, steel, section, heat, aim_HRC):
         time_s, _ = history.case(i)
         curves = np.array([history.at(x, i) for x in PLACES])
         if steel.basis == "tabulated":
-            found = structure.tabulated_structure(steel, len(PLACES), section.half_thickness_mm, _hardens_mm(steel, kind), True)
+            found = structure.tabulated_structure(
+                steel, len(PLACES), section.half_thickness_mm, _hardens_mm(steel, kind)
+            )
         else:
             found = structure.structure_of(steel, time_s, curves, ROOM_C)
         risk = crack_risk(job, steel, section, bath.medium, kind)
         results.append((bath, row, time_s, curves, found, risk))
     chosen = _choose(job, results, aim_HRC)
-    return _result(job, steel, section, heat, results, chosen, rises, needs, working, out_C, walk_s, limit_s, lowest_C, entry)
+    return _result(
+        job, steel, section, heat, results, chosen, rises, needs, working, out_C, walk_s, limit_s, lowest_C, entry
+    )
 
 
 def _choose(job, results, aim_HRC):
-    """Index of the bath to take: within the aim at the surface, then no high crack risk, then room to temper, then depth."""
+    """Index of the bath to take.
+
+    In order: within the aim at the surface, no high crack risk, room to temper, depth, then the mildest.
+    """
     if "medium" in job.decided:
         return next(i for i, r in enumerate(results) if r[0].medium == job.decided["medium"])
     low, high = aim_HRC
@@ -152,6 +188,7 @@ def _choose(job, results, aim_HRC):
         surface, centre = (found.HRC[SURFACE], found.HRC[CENTRE]) if found is not None else (-1.0, -1.0)
         short = 0 if surface >= low + 0.5 else round(low + 0.5 - surface)
         return (short, risk["grade"] == "high", surface < room, centre < room, BATH_ORDER.index(bath.medium))
+
     return min(range(len(results)), key=rank)
 
 
@@ -159,25 +196,61 @@ def _result(job, steel, section, heat, results, chosen, rises, needs, working, o
     bath, row, time_s, curves, found, risk = results[chosen]
     kind, marks = row["kind"], []
     if walk_s < 1.0:
-        marks.append(mark("quench.transfer_s", f"the thinnest part falls below {lowest_C:.0f} °C in {limit_s:.1f} s in air: quench beside the fire"))
+        marks.append(
+            mark(
+                "quench.transfer_s",
+                f"the thinnest part falls below {lowest_C:.0f} °C in {limit_s:.1f} s in air: quench beside the fire",
+            )
+        )
     if words.is_liquid(row) and bath.volume_L is None:
         marks.append(mark("quench.bath_rise_C", "not computed: the volume of the bath is not given"))
     if found is None:
         limit = _hardens_mm(steel, kind)
-        marks.append(mark("as_quenched", f"not computed: {section.width_mm:g} mm is beyond the {limit:g} mm the grade's sheet "
-                                         f"hardens through in this medium, and no model holds for this steel"))
+        marks.append(
+            mark(
+                "as_quenched",
+                f"not computed: {section.width_mm:g} mm is beyond the {limit:g} mm the grade's sheet "
+                f"hardens through in this medium, and no model holds for this steel",
+            )
+        )
     flash = number(row["flash_C"])
     if kind == "oil" and flash is None:
-        marks.append(mark("quench.flash_C", "flash point not known: read it on the oil's own sheet before heating anything"))
-    rate = {name: (None if found is None or found.rate_C_per_s[i] != found.rate_C_per_s[i] else rounded(found.rate_C_per_s[i]))
-            for name, i in (("surface", SURFACE), ("midradius", MIDRADIUS), ("centre", CENTRE))}
+        marks.append(
+            mark("quench.flash_C", "flash point not known: read it on the oil's own sheet before heating anything")
+        )
+    rate = {
+        name: (
+            None if found is None or found.rate_C_per_s[i] != found.rate_C_per_s[i] else rounded(found.rate_C_per_s[i])
+        )
+        for name, i in (("surface", SURFACE), ("midradius", MIDRADIUS), ("centre", CENTRE))
+    }
     others = tuple(_other(results, i, chosen) for i in range(len(results)) if i != chosen)
     low, high = number(row["window_low_C"]), number(row["window_high_C"])
     transfer = np.floor(walk_s * 2) / 2 if walk_s >= 1 else 0.5
-    return Quench(bath.medium, row["name"], kind, rounded(bath.temperature_C, 0), (low, high) if low is not None else (None, None),
-                  bath.agitation, rounded(rises[chosen]), bath.volume_L, rounded(needs[chosen]), rounded(transfer),
-                  rounded(float(entry[0, -1]), 0), rounded(out_C[chosen], 0), rounded(time_s[-1], 0), rate, flash, risk, others,
-                  time_s, curves, found, tuple(marks), _why(steel, section, heat, bath, row, found, working[chosen], walk_s, lowest_C))
+    return Quench(
+        bath.medium,
+        row["name"],
+        kind,
+        rounded(bath.temperature_C, 0),
+        (low, high) if low is not None else (None, None),
+        bath.agitation,
+        rounded(rises[chosen]),
+        bath.volume_L,
+        rounded(needs[chosen]),
+        rounded(transfer),
+        rounded(float(entry[0, -1]), 0),
+        rounded(out_C[chosen], 0),
+        rounded(time_s[-1], 0),
+        rate,
+        flash,
+        risk,
+        others,
+        time_s,
+        curves,
+        found,
+        tuple(marks),
+        _why(steel, section, heat, bath, row, found, working[chosen], walk_s, lowest_C),
+    )
 
 
 def _other(results, i, chosen):
@@ -195,25 +268,63 @@ def _other(results, i, chosen):
         why = "risks cracking: " + risk["reasons"][0]
     else:
         why = "gains nothing and is harsher"
-    return {"medium": bath.medium, "medium_name": row["name"], "surface_HRC": surface, "centre_HRC": centre, "why_not": why}
+    return {
+        "medium": bath.medium,
+        "medium_name": row["name"],
+        "surface_HRC": surface,
+        "centre_HRC": centre,
+        "why_not": why,
+    }
 
 
 def _why(steel, section, heat, bath, row, found, working_C, walk_s, lowest_C):
     part = f"{section.geometry}, half thickness {section.half_thickness_mm:.1f} mm ({section.aspect_note})"
-    quench_inputs = f"{part}; from {heat.temperature_C:.0f} °C, {walk_s:.1f} s in air; {row['name']} at {working_C:.0f} °C, {words.AGITATIONS[bath.agitation]}"
+    quench_inputs = (
+        f"{part}; from {heat.temperature_C:.0f} °C, {walk_s:.1f} s in air; {row['name']} at {working_C:.0f} °C, "
+        f"{words.AGITATIONS[bath.agitation]}"
+    )
     by = found.by if found is not None else "none holds"
     source = {"tabulated for the grade": steel.temperatures.get("as_quenched_HRC", ("", "", "", ""))[3]}.get(
-        by, "ASTM A255 (from memory); Kirkaldy & Venugopalan 1984, Li et al. 1998 (from memory); Hodge & Orehoski 1946; Koistinen & Marburger 1959")
-    as_quenched = note("Hardness before tempering", by, quench_inputs, source, "±2 HRC hard through, ±6 where half hard", found is not None)
+        by,
+        "ASTM A255 (from memory); Kirkaldy & Venugopalan 1984, Li et al. 1998 (from memory); "
+        "Hodge & Orehoski 1946; Koistinen & Marburger 1959",
+    )
+    as_quenched = note(
+        "Hardness before tempering",
+        by,
+        quench_inputs,
+        source,
+        "±2 HRC hard through, ±6 where half hard",
+        found is not None,
+    )
     return {
-        "quench.transfer_s": note("Time from fire to bath", "lumped cooling in still air of the thinnest section, capped by practice",
-                                  f"{section.thinnest_mm:g} mm from {heat.temperature_C:.0f} to {lowest_C:.0f} °C",
-                                  "Stefan-Boltzmann, Churchill & Chu 1975; common practice"),
-        "quench.time_in_bath_s": note("Time in the bath", "transient conduction, finite volumes; austenite properties", quench_inputs,
-                                      f"heat-transfer curve: {row['source']}", "bath curves are known to ±30-50 %; latent heat of transformation left out"),
-        "quench.bath_rise_C": note("Rise of the bath", "enthalpy balance", f"{section.hot_mass_kg:.2f} kg hot, {bath.volume_L or 0:g} L",
-                                   "EN 1993-1-2:2005 cl. 3.4.1.2, integrated; " + row["source"], "well stirred, no loss"),
-        "quench.volume_needed_L": note("Bath needed", "enthalpy balance for the allowed rise", f"{section.hot_mass_kg:.2f} kg hot",
-                                       "EN 1993-1-2:2005; allowed rise 38 K in oil (1 US gal per lb), 10 K in water (common practice)"),
-        "as_quenched.surface": as_quenched, "as_quenched.midradius": as_quenched, "as_quenched.centre": as_quenched,
+        "quench.transfer_s": note(
+            "Time from fire to bath",
+            "lumped cooling in still air of the thinnest section, capped by practice",
+            f"{section.thinnest_mm:g} mm from {heat.temperature_C:.0f} to {lowest_C:.0f} °C",
+            "Stefan-Boltzmann, Churchill & Chu 1975; common practice",
+        ),
+        "quench.time_in_bath_s": note(
+            "Time in the bath",
+            "transient conduction, finite volumes; austenite properties",
+            quench_inputs,
+            f"heat-transfer curve: {row['source']}",
+            "bath curves are known to ±30-50 %; latent heat of transformation left out",
+        ),
+        "quench.bath_rise_C": note(
+            "Rise of the bath",
+            "enthalpy balance",
+            f"{section.hot_mass_kg:.2f} kg hot, {bath.volume_L or 0:g} L",
+            "EN 1993-1-2:2005 cl. 3.4.1.2, integrated; " + row["source"],
+            "well stirred, no loss",
+        ),
+        "quench.volume_needed_L": note(
+            "Bath needed",
+            "enthalpy balance for the allowed rise",
+            f"{section.hot_mass_kg:.2f} kg hot",
+            "EN 1993-1-2:2005; allowed rise 38 K in oil (1 US gal per lb), 10 K in water (common practice)",
+        ),
+        "as_quenched.surface": as_quenched,
+        "as_quenched.midradius": as_quenched,
+        "as_quenched.centre": as_quenched,
     }

@@ -13,7 +13,10 @@ def crack_risk(job, steel, section, medium, kind):
     harsher_by = MEANT_FOR[steel.hardening] - gentle
     if harsher_by > 0:
         points += 1.5 * harsher_by + (0.5 if kind == "water" else 0.0)
-        reasons.append(f"{steel.name.split(',')[0]} is meant for {steel.hardening}, not for {'water' if kind == 'water' else 'oil'}")
+        reasons.append(
+            f"{steel.name.split(',')[0]} is meant for {steel.hardening}, "
+            f"not for {'water' if kind == 'water' else 'oil'}"
+        )
     if steel.Ms_C < 200 and kind in ("water", "oil"):
         points += 1.5
         reasons.append(f"martensite forms late and cold (Ms {steel.Ms_C:.0f} °C)")
@@ -22,8 +25,15 @@ def crack_risk(job, steel, section, medium, kind):
         reasons.append(f"martensite forms below 270 °C (Ms {steel.Ms_C:.0f} °C)")
     for feature in job.part.features:
         points += FEATURE_POINTS[feature]
-        reasons.append({"sharp-corner": "a sharp inside corner", "keyway": "a keyway", "hole": "a hole",
-                        "section-step": "a step in section", "thread": "a thread"}[feature])
+        reasons.append(
+            {
+                "sharp-corner": "a sharp inside corner",
+                "keyway": "a keyway",
+                "hole": "a hole",
+                "section-step": "a step in section",
+                "thread": "a thread",
+            }[feature]
+        )
     if section.width_mm / section.thinnest_mm > 2:
         points += 1.0
         reasons.append(f"thick beside thin ({section.width_mm:g} and {section.thinnest_mm:g} mm)")

@@ -1,4 +1,5 @@
 """Numbers as a shop reads them: both temperature scales, ranges, times, the part in one phrase."""
+
 from pycore import words
 from pycore.data import number, table
 from pycore.lengths import show_length
@@ -33,7 +34,13 @@ def minutes(value_min):
 
 
 def seconds(value_s):
-    return minutes(value_s / 60) if value_s >= 120 else f"{value_s:.0f} s" if value_s >= 3 or value_s == int(value_s) else f"{value_s:.1f} s"
+    return (
+        minutes(value_s / 60)
+        if value_s >= 120
+        else f"{value_s:.0f} s"
+        if value_s >= 3 or value_s == int(value_s)
+        else f"{value_s:.1f} s"
+    )
 
 
 def hold(hold_min, cycles):
@@ -70,9 +77,14 @@ def part_phrase(job, section):
 
 def shop_phrase(job):
     heat = words.HEATS[job.heat.kind]
-    heat += " with a pyrometer" if job.heat.pyrometer and job.heat.kind not in ("kiln", "salt") else (
-        "" if job.heat.pyrometer else " with a magnet")
-    baths = ", ".join(words.media_row(b.medium)["name"] + (f" {b.volume_L:g} L" if b.volume_L else "") for b in job.baths)
+    heat += (
+        " with a pyrometer"
+        if job.heat.pyrometer and job.heat.kind not in ("kiln", "salt")
+        else ("" if job.heat.pyrometer else " with a magnet")
+    )
+    baths = ", ".join(
+        words.media_row(b.medium)["name"] + (f" {b.volume_L:g} L" if b.volume_L else "") for b in job.baths
+    )
     return f"{heat}; {baths}; {words.TEMPERS[job.temper.kind]} to {job.temper.max_C:g} °C"
 
 

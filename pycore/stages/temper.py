@@ -1,4 +1,5 @@
 """Which temper brings the part to its service hardness, and what to do where the oven cannot."""
+
 import math
 from dataclasses import dataclass
 
@@ -12,15 +13,15 @@ from pycore.stages.notes import mark, nearest, note, rounded
 from pycore.stages.quench import CENTRE, MIDRADIUS, SURFACE  # places of the section
 
 ROOM_C = 20.0
-LOWEST_C = 150.0             # coolest useful temper: relieves without softening (common practice)
-UNTEMPERED_TO_C = 100.0      # below this an hour changes nothing a file can feel (common practice)
+LOWEST_C = 150.0  # coolest useful temper: relieves without softening (common practice)
+UNTEMPERED_TO_C = 100.0  # below this an hour changes nothing a file can feel (common practice)
 THROUGH_WITHIN_K = 5.0
-FLASH_HOLD_MIN = 2.0         # tempering to colour at the fire (common practice)
+FLASH_HOLD_MIN = 2.0  # tempering to colour at the fire (common practice)
 HOLD_PER_MM_MIN = 60 / 25.4  # 1 h per inch of section (supplier sheets; common practice)
-LONGEST_HOLD_H = 8.0         # what a patient smith would still do
-CURVE_ERROR_HRC = 1.0        # scatter of published curves at one temperature (handbook spread)
-FIT_ERROR_HRC = 1.5          # leave-one-steel-out error of the regression, 0.9 mean
-START_WITHIN_MIN = {"water": 15, "oil": 30, "gas": 60, "plates": 60}   # common practice; cracks come with delay
+LONGEST_HOLD_H = 8.0  # what a patient smith would still do
+CURVE_ERROR_HRC = 1.0  # scatter of published curves at one temperature (handbook spread)
+FIT_ERROR_HRC = 1.5  # leave-one-steel-out error of the regression, 0.9 mean
+START_WITHIN_MIN = {"water": 15, "oil": 30, "gas": 60, "plates": 60}  # common practice; cracks come with delay
 GRID_C = np.arange(LOWEST_C, 701.0, 1.0)
 
 
@@ -36,9 +37,9 @@ class Temper:
     start_within_min: int
     reached: bool
     needs_C: float | None
-    longer_h: float | None       # hold in hours that would reach the aim at the oven's hottest, if one does
+    longer_h: float | None  # hold in hours that would reach the aim at the oven's hottest, if one does
     accuracy_C: float
-    final: dict                  # place -> {"HRC": {low, mid, high}}
+    final: dict  # place -> {"HRC": {low, mid, high}}
     final_HRC: np.ndarray | None
     final_low: np.ndarray | None
     final_high: np.ndarray | None
@@ -60,8 +61,11 @@ class Response:
     def __init__(self, steel, as_quenched_HRC):
         curve = tempering.grade_curve(steel.grade) if steel.grade else None
         alloyed = sum(steel.composition.get(e, 0.0) for e in ("Cr", "Ni", "Mo")) > 0.6
-        self.constant = 20.0 if steel.basis == "tabulated" else float(
-            tempering.hollomon_jaffe_constant(steel.dissolved_C_pct, alloyed))
+        self.constant = (
+            20.0
+            if steel.basis == "tabulated"
+            else float(tempering.hollomon_jaffe_constant(steel.dissolved_C_pct, alloyed))
+        )
         if curve is not None:
             self.knots_C, knots_HRC, hold_h, cycles, self.source = curve
             self.reference_h, self.fit, self.error = hold_h * cycles, False, CURVE_ERROR_HRC
@@ -70,14 +74,16 @@ class Response:
             composition = dict(steel.composition, C=steel.dissolved_C_pct)
             knots_HRC = hardness.HV_to_HRC(tempering.grange_baughman_fit_HV(composition, self.knots_C))
             self.reference_h, self.fit, self.error = 1.0, True, FIT_ERROR_HRC
-            self.source = "regression on Grange & Baughman 1956, Trans. ASM 48 (open set Raiipa Technologies, CC BY 4.0)"
+            self.source = (
+                "regression on Grange & Baughman 1956, Trans. ASM 48 (open set Raiipa Technologies, CC BY 4.0)"
+            )
         first = min(UNTEMPERED_TO_C, self.knots_C[0] - 10)
         self.knots_HRC = np.minimum(knots_HRC, as_quenched_HRC) if steel.basis != "tabulated" else knots_HRC
         self._T = np.concatenate([[first], self.knots_C])
         self._HRC = np.concatenate([[max(as_quenched_HRC, self.knots_HRC[0])], self.knots_HRC])
 
     def HRC(self, temperature_C, total_h):
-        """Hardness after a total time at temperature: the curve, read at the temperature equal in Hollomon-Jaffe's P."""
+        """Hardness after a total time: the curve, read at the temperature that has the same P in its own time."""
         at = tempering.equivalent_temperature_C(temperature_C, total_h, self.reference_h, self.constant)
         end = self._T[-1]
         slope = (self._HRC[-1] - self._HRC[-2]) / (self._T[-1] - self._T[-2])
@@ -117,10 +123,8 @@ def temper(job, steel, section, quenched, found, aim_HRC):
     low, high = aim_HRC
     target = (low + high) / 2
     curve_HRC = response.HRC(GRID_C, total_h)
-    if found is None:                      # no structure known: the temper is still that of the hardened steel
-        surface = curve_HRC
-    else:
-        surface = tempered_HRC(response, found, GRID_C, total_h, SURFACE)
+    # Where no structure is known the temper is still that of the hardened steel.
+    surface = curve_HRC if found is None else tempered_HRC(response, found, GRID_C, total_h, SURFACE)
     needs = _first_at_most(GRID_C, surface, target)
     window = (_first_at_most(GRID_C, surface, high), _last_at_least(GRID_C, surface, low))
     reached, longer = True, None
@@ -143,7 +147,12 @@ def temper(job, steel, section, quenched, found, aim_HRC):
         if out:
             marks.append(mark("temper.temperature_C", "outside the data of the tempering regression: " + say(out)))
         if chosen < tempering.FIT_RANGE_C[0]:
-            marks.append(mark("temper.temperature_C", "below 204 °C the hardness is drawn between the regression and the as-quenched value"))
+            marks.append(
+                mark(
+                    "temper.temperature_C",
+                    "below 204 °C the hardness is drawn between the regression and the as-quenched value",
+                )
+            )
     heat_up = None
     if job.temper.kind in ("torch", "residual-heat"):
         marks.append(mark("temper.heat_up_min", "not computed: the colour tells when it is there"))
@@ -155,9 +164,28 @@ def temper(job, steel, section, quenched, found, aim_HRC):
     steel_set = "stainless" if steel.composition.get("Cr", 0) > 10 else "carbon"
     why = _why(steel, response, job, oven, section, hold_min, cycles, accuracy, found)
     tensile = _tensile(final)
-    return Temper(job.temper.kind, rounded(chosen, 0), _window(window, hottest), rounded(hold_min, 0), rounded(heat_up, 0), int(cycles),
-                  colours.temper_colour(chosen, steel_set), start, reached, rounded(needs, 0) if not reached else None,
-                  longer, rounded(accuracy), final, *arrays, GRID_C[::10], curve_HRC[::10], response.source, tensile, tuple(marks), why)
+    return Temper(
+        job.temper.kind,
+        rounded(chosen, 0),
+        _window(window, hottest),
+        rounded(hold_min, 0),
+        rounded(heat_up, 0),
+        int(cycles),
+        colours.temper_colour(chosen, steel_set),
+        start,
+        reached,
+        rounded(needs, 0) if not reached else None,
+        longer,
+        rounded(accuracy),
+        final,
+        *arrays,
+        GRID_C[::10],
+        curve_HRC[::10],
+        response.source,
+        tensile,
+        tuple(marks),
+        why,
+    )
 
 
 def _fully_hard_HRC(steel, found):
@@ -199,9 +227,12 @@ def _window(window, hottest):
 def _longer(response, found, hottest, high, cycles):
     """Hours for each of the cycles at the oven's hottest that would bring the surface into the aim, or None."""
     for hold_h in (2.0, 3.0, 4.0, 6.0, LONGEST_HOLD_H):
-        HRC = (response.HRC(hottest, hold_h * cycles) if found is None
-               else tempered_HRC(response, found, hottest, hold_h * cycles, SURFACE))
-        if HRC <= high:
+        HRC = (
+            response.HRC(hottest, hold_h * cycles)
+            if found is None
+            else tempered_HRC(response, found, hottest, hold_h * cycles, SURFACE)
+        )
+        if high >= HRC:
             return hold_h
     return None
 
@@ -212,9 +243,17 @@ def _heat_up_min(job, section, target_C, oven):
     def boundary(surface_C, time_s):
         return convection + radiation_coefficient(surface_C, target_C, emissivity), np.full_like(surface_C, target_C)
 
-    history = conduction.conduct(section.geometry, section.half_thickness_mm, steel_properties.on_heating(), ROOM_C, boundary,
-                                 until=lambda T: T[:, 0] >= target_C - THROUGH_WITHIN_K, end_s=12 * 3600.0,
-                                 largest_change_K=20.0, nodes=9)
+    history = conduction.conduct(
+        section.geometry,
+        section.half_thickness_mm,
+        steel_properties.on_heating(),
+        ROOM_C,
+        boundary,
+        until=lambda T: T[:, 0] >= target_C - THROUGH_WITHIN_K,
+        end_s=12 * 3600.0,
+        largest_change_K=20.0,
+        nodes=9,
+    )
     return float(history.case()[0][-1]) / 60.0
 
 
@@ -251,13 +290,31 @@ def _why(steel, response, job, oven, section, hold_min, cycles, accuracy, found)
         model = "published curve of the grade, with Hollomon-Jaffe for time"
     inputs = f"{cycles} × {hold_min:g} min; constant {response.constant:.1f}; curve for {response.reference_h:g} h"
     source = response.source + "; Hollomon & Jaffe 1945, Trans. AIME 162, 223"
-    final = note("Hardness after tempering", model, inputs + f"; oven ±{accuracy:g} °C", source,
-                 f"curve ±{response.error:g} HRC", found is not None)
+    final = note(
+        "Hardness after tempering",
+        model,
+        inputs + f"; oven ±{accuracy:g} °C",
+        source,
+        f"curve ±{response.error:g} HRC",
+        found is not None,
+    )
     return {
-        "temper.temperature_C": note("Tempering temperature", model, inputs, source, f"{response.knots_C[0]:g}-{response.knots_C[-1]:g} °C"),
-        "temper.hold_min": note("Time at heat", "1 h per 25 mm of section, with a minimum by steel", f"{section.width_mm:g} mm, {steel.family}",
-                                "supplier sheets (Crucible, Diamond Metals); common practice"),
-        "temper.heat_up_min": note("Time to heat through", "transient conduction, EN 1993-1-2 properties; convection and radiation",
-                                   f"{oven['name']}, half thickness {section.half_thickness_mm:.1f} mm", "EN 1993-1-2:2005 cl. 3.4.1; " + oven["source"]),
-        "final.surface": final, "final.midradius": final, "final.centre": final,
+        "temper.temperature_C": note(
+            "Tempering temperature", model, inputs, source, f"{response.knots_C[0]:g}-{response.knots_C[-1]:g} °C"
+        ),
+        "temper.hold_min": note(
+            "Time at heat",
+            "1 h per 25 mm of section, with a minimum by steel",
+            f"{section.width_mm:g} mm, {steel.family}",
+            "supplier sheets (Crucible, Diamond Metals); common practice",
+        ),
+        "temper.heat_up_min": note(
+            "Time to heat through",
+            "transient conduction, EN 1993-1-2 properties; convection and radiation",
+            f"{oven['name']}, half thickness {section.half_thickness_mm:.1f} mm",
+            "EN 1993-1-2:2005 cl. 3.4.1; " + oven["source"],
+        ),
+        "final.surface": final,
+        "final.midradius": final,
+        "final.centre": final,
     }
