@@ -67,8 +67,8 @@ def structure_of(steel, time_s, curves_C, end_C):
     rate = jominy_rate_C_per_s(time_s, curves_C)
     soft = {name: formed[name] for name in ("ferrite", "pearlite", "bainite")}
     share_soft = sum(soft.values())
-    kept = koistinen = float(martensite.koistinen_marburger_1959(Ms, end_C))
-    hard_HV = _hard_HV(C, kept)
+    retained = float(martensite.koistinen_marburger_1959(Ms, end_C))
+    hard_HV = _hard_HV(C, retained)
     soft_HV = _soft_HV(steel, soft, formed["pearlite_formed_C"], rate)
     HV = (1 - share_soft) * hard_HV + share_soft * soft_HV
     HRC = hardness.HV_to_HRC(HV)
@@ -76,6 +76,8 @@ def structure_of(steel, time_s, curves_C, end_C):
     if steel.DI_mm is not None and not outside({"C": C}, {"C": hardenability.JOMINY_C_RANGE}):
         J = hardenability.jominy_distance_sixteenths(rate)
         second = hardenability.a255_jominy_HRC(steel.composition, J, steel.grain_size)
+        # The dividing factors run on below the softest structure the steel can have at that rate.
+        second = np.maximum(second, hardness.HV_to_HRC(_ferrite_pearlite_HV(steel, rate)))
         disagreement = float(np.max(np.abs(second - HRC)))
         by = "ASTM A255 Jominy equivalence; phases by kinetics, scaled to it"
         HRC = second
@@ -83,7 +85,7 @@ def structure_of(steel, time_s, curves_C, end_C):
         share_soft, soft = _scaled(soft, share_soft, HV, hard_HV, soft_HV)
         soft_HV = np.where(share_soft > 1e-6, (HV - (1 - share_soft) * hard_HV) / np.maximum(share_soft, 1e-6), soft_HV)
     hard = 1 - share_soft
-    fractions = {**soft, "martensite": hard * (1 - koistinen), "retained_austenite": hard * koistinen}
+    fractions = {**soft, "martensite": hard * (1 - retained), "retained_austenite": hard * retained}
     error = (
         MODEL_ERROR_HRC
         + (STEEP_ERROR_HRC - MODEL_ERROR_HRC) * 4 * hard * share_soft
@@ -114,8 +116,7 @@ def _hard_HV(C_pct, retained):
 
 def _soft_HV(steel, soft, formed_C, rate):
     """Mean hardness of ferrite, pearlite and bainite together, by Maynier to 0.5 % C and by pearlite fineness above."""
-    composition = dict(steel.composition, C=min(steel.composition["C"], 0.5))
-    _, bainite, ferrite_pearlite = hardness.maynier_1978_HV(composition, np.maximum(rate, 0.02) * 3600.0)
+    bainite, ferrite_pearlite = _maynier(steel, rate)
     pearlite = hardness.pearlite_HV(np.where(np.isnan(formed_C), 600.0, formed_C))
     both = soft["ferrite"] + soft["pearlite"]
     mixed = (soft["pearlite"] * pearlite + soft["ferrite"] * FERRITE_HV) / np.maximum(both, 1e-9)
@@ -126,6 +127,17 @@ def _soft_HV(steel, soft, formed_C, rate):
     return np.where(
         total > 1e-6, (both * ferrite_pearlite + soft["bainite"] * bainite) / np.maximum(total, 1e-9), bainite
     )
+
+
+def _maynier(steel, rate):
+    """Hardness of bainite and of ferrite-pearlite at a rate, with the carbon held at the end of the model's range."""
+    composition = dict(steel.composition, C=min(steel.composition["C"], 0.5))
+    return hardness.maynier_1978_HV(composition, np.maximum(rate, 0.02) * 3600.0)[1:]
+
+
+def _ferrite_pearlite_HV(steel, rate):
+    """Hardness of the steel if it turned to ferrite and pearlite altogether."""
+    return _maynier(steel, rate)[1]
 
 
 def _scaled(soft, share_soft, HV, hard_HV, soft_HV):
