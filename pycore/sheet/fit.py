@@ -13,12 +13,12 @@ from .words import WHOLE
 PAPERS = (("letter", 279.4 - 20 - 2), ("a4", 297 - 20 - 3))
 # Size classes of sheet.css: number, steps in pt, foot in pt, padding above and below a step in mm,
 # largest number on the heat line in pt. From 4 on, what also stands elsewhere is left out on paper, from 6 on
-# the headings of the foot, in 7 the reasons of the cautions (they stay in the notes).
+# the headings of the foot, from 7 on the reasons of cautions less than a danger, in 8 all (the notes keep them).
 SIZES = ((1, 11.5, 10, 1.0, 46), (2, 11, 10, 0.9, 42), (3, 10.5, 9.5, 0.8, 40), (4, 10, 9.5, 0.7, 38),
-         (5, 9.5, 9, 0.55, 34), (6, 9.5, 9, 0.4, 32), (7, 9.5, 9, 0.35, 32))
+         (5, 9.5, 9, 0.55, 34), (6, 9.5, 9, 0.4, 32), (7, 9.5, 9, 0.35, 32), (8, 9.5, 8.5, 0.3, 32))
 TWO_PAGES = 3                  # when nothing fits on one page, two pages in comfortable type
 TITLE_SIZES = ((28, 1), (24, 1), (20, 1), (17, 2), (14, 2), (12, 3))
-HEAD_MM, CARE_MM = 130, 119
+HEAD_MM, CARE_MM, LEFT_MM = 127, 122, 50
 SPLITS_MM = (52, 56, 60, 64, 68)     # possible widths of the "do" column; "look for" takes the rest of
 DO_AND_LOOK_MM = 136
 LEADING = 1.2
@@ -63,13 +63,21 @@ def steps_height(steps, size, do_mm):
     return total
 
 
+def says_why(caution, number):
+    """Whether a caution's reason is on the paper at this size class."""
+    return number < 7 or (number == 7 and caution["signal"] == "danger")
+
+
 def height_of(view, size, line_mm):
-    """The sheet's height in mm at a size class, its parts in the order of the template."""
+    """The sheet's height in mm at a size class, its parts in the order of the template; and whether the facts
+    go under the hardness."""
     number, bench_pt, foot_pt, _, _ = size
     foot, dense = foot_pt * POINT_MM * LEADING, number >= 4
     title = min(view["title_pt"], 24) if dense else view["title_pt"]
     total = title * POINT_MM * 1.05 * lines(view["heading"], title, HEAD_MM, True) + 1
-    total += 4.25 * lines(f"{view['summary']['steel']} · {view['summary']['part']}", 10, HEAD_MM)
+    head_pt = 9.5 if dense else 10
+    head = head_pt * POINT_MM * LEADING
+    total += head * lines(f"{view['summary']['steel']}  · {view['summary']['part']}", head_pt, HEAD_MM)
     if view["framed"]:
         total = max(total, 19.5) + 2.5 + 6
         total += foot * lines("  ".join(["xx" + view["verdict_word"]] + view["reasons"]), foot_pt, 178)
@@ -80,27 +88,31 @@ def height_of(view, size, line_mm):
             total += foot * sum(count_lines(runs, foot_pt, 174) for runs in others)
     else:
         reasons = view["reasons"][:1] if dense else view["reasons"]
-        total = max(total + 4.25 * lines(" ".join(reasons), 10, HEAD_MM), 19.5) + 2.5
+        total = max(total + head * lines(" ".join(reasons), head_pt, HEAD_MM), 19.5) + 2.5
     total += line_mm + 2 + 1 + (0.3 if dense else 4.6)
     total += min(steps_height(view["steps"], size, do_mm) for do_mm in SPLITS_MM)
-    left = (4.9 if number < 6 else 0) + 26 + 4 + 3 * foot
-    right = (4.9 if number < 6 else 0) + sum(
-        count_lines([(row["signal"].upper(), True), (f"{row['text']} {row['because'] if number < 7 else ''}", False)],
+    titles = 4.9 if number < 6 else 0
+    left = titles + 25 + 4 + 3 * foot
+    right = titles + sum(
+        count_lines([(row["signal"].upper(), True), (row["text"] + (f" {row['because']}" if says_why(row, number) else ""), False)],
                     foot_pt, CARE_MM) * foot + 0.6 for row in view["cautions"])
-    total += max(left, right) + 1.8
-    total += 1 + foot * lines("    ".join(f"{row['name']} {plain(row['text'])}" for row in view["facts"]
-                                          if not (row["spare"] and dense)), foot_pt, 178, True)
+    facts = [f"{row['name']} {plain(row['text'])}" for row in view["facts"] if not (row["spare"] and dense)]
+    beside = left + 1 + foot * sum(lines(fact, foot_pt, LEFT_MM, True) for fact in facts)
+    below = 1 + foot * lines("    ".join(facts), foot_pt, 178, True)
+    # The facts stand under the hardness where the cautions leave that corner free, else in a row of their own.
+    facts_left = beside <= max(left, right) + below
+    total += 1.8 + (max(beside, right) if facts_left else max(left, right) + below)
     faults = view["faults"]
     if faults and dense:
         total += 2.2 + foot * count_lines(sum([[(row["sign"], True), (f"  {row['then'] or row['cause']}", False)] for row in faults], []), foot_pt, 184)
     elif faults:
         room = (186 - 4 * (len(faults) - 1)) / len(faults)
         total += 2.2 + foot * max(lines(row["sign"], foot_pt, room, True) + lines(f"{row['cause']} {row['then']}", foot_pt, room) for row in faults)
-    return total + 9.5 + 1.2 + 3.4 * (2 if view["marked"] or view["missing"] else 1)
+    return total + 9.5 + 1.2 + 3.4 * (2 if view["marked"] or view["missing"] else 1), facts_left
 
 
 def fit(plan, view, link_to):
-    """Sets view["heat_line"] and, for each paper, the largest size class that keeps the sheet on one page."""
+    """Sets view["heat_line"] and view["classes"]: for each paper the largest size that keeps the sheet on one page."""
     drawn = {}
 
     def line(largest_pt):
@@ -110,15 +122,17 @@ def fit(plan, view, link_to):
 
     line(SIZES[-1][-1])                    # notes which numbers on the line are marked, for the legend
     view["marked"] = view["marked"]()
-    smallest = None                        # the line is drawn once, for the paper with the least room
+    smallest, classes = None, []           # the line is drawn once, for the paper with the least room
     for paper, room_mm in PAPERS:
         for size in SIZES:
-            if height_of(view, size, line(min(size[-1], (smallest or size)[-1]))[1]) <= room_mm:
+            height_mm, facts_left = height_of(view, size, line(min(size[-1], (smallest or size)[-1]))[1])
+            if height_mm <= room_mm:
                 smallest = smallest or size
                 break
         else:
-            size = SIZES[TWO_PAGES - 1]
-        view[paper] = size[0]
+            size, facts_left = SIZES[TWO_PAGES - 1], True
         heights = {do_mm: steps_height(view["steps"], size, do_mm) for do_mm in SPLITS_MM}
-        view[paper + "_do"] = min(heights, key=lambda do_mm: (round(heights[do_mm], 1), abs(do_mm - 60)))
+        do_mm = min(heights, key=lambda do_mm: (round(heights[do_mm], 1), abs(do_mm - 60)))
+        classes += [f"{paper}-{size[0]}", f"{paper}-do-{do_mm}"] + ([f"{paper}-left"] if facts_left else [])
     view["heat_line"] = line((smallest or SIZES[TWO_PAGES - 1])[-1])[0]
+    view["classes"] = " ".join(classes)

@@ -6,9 +6,9 @@ from markupsafe import Markup
 from . import svg
 from .words import is_number, number
 
-WIDTH_MM, HEIGHT_MM = 58, 26
-LEFT, RIGHT, TOP, FOOT = 7.5, 17.5, 1.6, 5
-TEXT_PT = 9.5
+WIDTH_MM, HEIGHT_MM = 50, 25
+LEFT, RIGHT, TOP, FOOT = 6, 17, 1.6, 4.6
+TEXT_PT = 9
 
 
 def curves_of(profile):

@@ -189,15 +189,37 @@ def sentence(text):
 
 def step_of(row, reader, letters):
     kind = clean(row.get("id"))
-    at, time = clean(row.get("at")), clean(row.get("time"))
+    do = clean(row.get("do"))
+    at, time = unsaid(clean(row.get("at")), do), unsaid(clean(row.get("time")), do)
     known = row.get("cautions") if isinstance(row.get("cautions"), list) else []
     return {
-        "n": clean(row.get("n")), "do": clean(row.get("do")), "hold": row.get("hold") is True,
+        "n": clean(row.get("n")), "do": do, "hold": row.get("hold") is True,
         "at": reader.shown(STEP_AT.get(kind, ""), at, together=True),
         "time": reader.shown(STEP_TIME.get(kind, ""), time, together=True), "at_text": at, "time_text": time, "look": clean(row.get("look")),
         "blanks": [part.strip() for part in clean(row.get("blank")).split(" / ") if part.strip()] or ["was"],
         "cautions": sorted({letters[name] for name in known if isinstance(name, str) and name in letters}),
     }
+
+
+def unsaid(text, do):
+    """`text` without what `do` has said: after "Heat to 790 °C" only "(775–805) · 1455 °F" is left."""
+    parts = []
+    for part in text.split(" · "):
+        head, comma, rest = part.partition(", ")
+        value, bracket, window = part.partition(" (")
+        if said(part, do):
+            continue
+        if comma and said(head, do):
+            part = rest
+        elif bracket and said(value, do):
+            part = "(" + window
+        parts.append(part)
+    return " · ".join(parts)
+
+
+def said(value, do):
+    """Whether `do` holds this figure as a whole: "6 min" is in "Soak 6 min" but not in "Soak 16 min"."""
+    return bool(value) and bool(re.search(r"(?<![\w–.−-])" + re.escape(value) + r"(?![\w–])", do))
 
 
 def facts_of(plan, reader):

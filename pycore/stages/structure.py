@@ -14,6 +14,7 @@ RATE_END_C = 500.0
 SEMI_INFINITE_RATIO = 0.622  # mean rate 704-500 °C over rate at 704 °C, erf solution of the end-quenched bar
 MODEL_ERROR_HRC = 2.0  # fully hardened: scatter of as-quenched tables about Hodge & Orehoski
 STEEP_ERROR_HRC = 6.0  # half martensite: a small change of rate moves hardness this far
+UNKNOWN_PEARLITE_C = 620.0  # where pearlite is taken to form if the kinetics formed none (from memory)
 FERRITE_HV = 180.0  # ferrite in low-alloy steel (from memory)
 
 
@@ -69,7 +70,7 @@ def structure_of(steel, time_s, curves_C, end_C):
     share_soft = sum(soft.values())
     retained = float(martensite.koistinen_marburger_1959(Ms, end_C))
     hard_HV = _hard_HV(C, retained)
-    soft_HV = _soft_HV(steel, soft, formed["pearlite_formed_C"], rate)
+    soft_HV, softest_HV = _soft_HV(steel, soft, formed["pearlite_formed_C"], rate)
     HV = (1 - share_soft) * hard_HV + share_soft * soft_HV
     HRC = hardness.HV_to_HRC(HV)
     by, disagreement = "kinetics with additivity (Kirkaldy & Venugopalan 1984; Li 1998)", 0.0
@@ -77,7 +78,7 @@ def structure_of(steel, time_s, curves_C, end_C):
         J = hardenability.jominy_distance_sixteenths(rate)
         second = hardenability.a255_jominy_HRC(steel.composition, J, steel.grain_size)
         # The dividing factors run on below the softest structure the steel can have at that rate.
-        second = np.maximum(second, hardness.HV_to_HRC(_ferrite_pearlite_HV(steel, rate)))
+        second = np.maximum(second, hardness.HV_to_HRC(softest_HV))
         disagreement = float(np.max(np.abs(second - HRC)))
         by = "ASTM A255 Jominy equivalence; phases by kinetics, scaled to it"
         HRC = second
@@ -115,29 +116,20 @@ def _hard_HV(C_pct, retained):
 
 
 def _soft_HV(steel, soft, formed_C, rate):
-    """Mean hardness of ferrite, pearlite and bainite together, by Maynier to 0.5 % C and by pearlite fineness above."""
-    bainite, ferrite_pearlite = _maynier(steel, rate)
-    pearlite = hardness.pearlite_HV(np.where(np.isnan(formed_C), 600.0, formed_C))
+    """(mean hardness of ferrite, pearlite and bainite together, hardness of ferrite and pearlite alone)."""
+    composition = dict(steel.composition, C=min(steel.composition["C"], 0.5))  # Maynier's range ends at 0.5 % C
+    _, bainite, ferrite_pearlite = hardness.maynier_1978_HV(composition, np.maximum(rate, 0.02) * 3600.0)
     both = soft["ferrite"] + soft["pearlite"]
-    mixed = (soft["pearlite"] * pearlite + soft["ferrite"] * FERRITE_HV) / np.maximum(both, 1e-9)
-    eutectoid = np.clip((steel.austenite["C"] - 0.4) / 0.35, 0.0, 1.0)  # Maynier's range ends at 0.5 % C
-    ferrite_pearlite = np.where(both > 1e-6, (1 - eutectoid) * ferrite_pearlite + eutectoid * mixed, ferrite_pearlite)
+    lever = min(1.0, steel.austenite["C"] / kinetics.EUTECTOID_C_PCT)
+    pearlite_share = np.where(both > 0.02, soft["pearlite"] / np.maximum(both, 1e-9), lever)
+    pearlite = hardness.pearlite_HV(np.where(np.isnan(formed_C), UNKNOWN_PEARLITE_C, formed_C))
+    by_fineness = pearlite_share * pearlite + (1 - pearlite_share) * FERRITE_HV
+    weight = np.clip((steel.austenite["C"] - 0.4) / 0.35, 0.0, 1.0)  # Maynier up to 0.4 % C, fineness from 0.75
+    ferrite_pearlite = (1 - weight) * ferrite_pearlite + weight * by_fineness
     bainite = np.maximum(bainite, ferrite_pearlite)
     total = both + soft["bainite"]
-    return np.where(
-        total > 1e-6, (both * ferrite_pearlite + soft["bainite"] * bainite) / np.maximum(total, 1e-9), bainite
-    )
-
-
-def _maynier(steel, rate):
-    """Hardness of bainite and of ferrite-pearlite at a rate, with the carbon held at the end of the model's range."""
-    composition = dict(steel.composition, C=min(steel.composition["C"], 0.5))
-    return hardness.maynier_1978_HV(composition, np.maximum(rate, 0.02) * 3600.0)[1:]
-
-
-def _ferrite_pearlite_HV(steel, rate):
-    """Hardness of the steel if it turned to ferrite and pearlite altogether."""
-    return _maynier(steel, rate)[1]
+    mixed = (both * ferrite_pearlite + soft["bainite"] * bainite) / np.maximum(total, 1e-9)
+    return np.where(total > 1e-6, mixed, bainite), ferrite_pearlite
 
 
 def _scaled(soft, share_soft, HV, hard_HV, soft_HV):
