@@ -14,7 +14,7 @@ checked by hash and kept in .venv, .cache and web/node_modules; nothing is done 
 
 import sys
 
-if sys.version_info < (3, 11):
+if sys.version_info < (3, 11):  # noqa: UP036  (said before anything newer fails with less clear words)
     sys.exit(f"Quenchwright needs Python 3.11 or newer to build; this is {sys.version.split()[0]}.")
 
 import argparse
@@ -76,7 +76,7 @@ class Build:
 
     def wheels(self) -> None:
         self.steps.step("Wheels for the page, checked by hash")
-        source = fetch.Wheels(self.steps, self.given)
+        source = fetch.Wheels(self.steps, self.node.node, self.given)
         self.own = source.runtime()
         self.jinja2 = source.get("jinja2")
         self.markupsafe = self.work / "markupsafe-3.0.3-py3-none-any.whl"

@@ -16,6 +16,8 @@ A255_RANGE = {
     "V": (0.0, 0.20),
 }  # ASTM A255-10, section 1.3
 JOMINY_C_RANGE = (0.10, 0.65)
+LAST_CUTOFF_J = 14.0
+UNUSED_ABOVE_DI_IN = {24.0: 6.0}   # this row, as remembered, turns up again there and would soften deep-hardening steel
 GRAIN_FACTOR = 1.08  # about 8 % of DI a grain-size number; closed form of Grossmann's base-carbon table
 
 
@@ -84,10 +86,13 @@ def a255_dividing_factor(J_sixteenths, DI_in):
     """
     stations, factors = [1.0], [1.0]
     for row in table("a255_dividing"):
-        cutoff = number(row["cutoff_DI_in"]) or 7.0
-        at = float(np.clip(DI_in, 0.8, 7.0))
+        J, at = float(row["J_sixteenths"]), float(np.clip(DI_in, 0.8, 7.0))
+        if at > UNUSED_ABOVE_DI_IN.get(J, 7.0):
+            continue
+        # Past J 14 the 7 in of the table is its end, not a cut-off: the factor is still above 1 there.
+        cutoff = number(row["cutoff_DI_in"]) or 7.0 if J <= LAST_CUTOFF_J else np.inf
         value = sum((number(row[f"a{k}"]) or 0.0) * at**k for k in range(6)) if at < cutoff else 1.0
-        stations.append(float(row["J_sixteenths"]))
+        stations.append(J)
         factors.append(max(1.0, value))
     factors = np.maximum.accumulate(factors)  # the rows from memory cross a little near their cut-offs
     return np.interp(J_sixteenths, stations, factors)

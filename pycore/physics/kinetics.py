@@ -99,7 +99,8 @@ def alloy_weight(composition):
 def growth(X, late=0.0, power=2 / 3):
     """Growth term of the rate form: X^(2(1-X)/3) (1-X)^(2X/3), slowed late for bainite.
 
-    Inputs: X, fraction 0 to 1, scalar or array; late, the bracket of bainite's exp(late X2), 0 for the others.
+    Inputs: X, fraction 0 to 1, scalar or array; late, the bracket of bainite's exp(late X2), 0 for the others; power,
+        2/3 for Kirkaldy-Venugopalan, 0.4 for Li.
     Returns: -, same shape.
     Valid: 0 to 1. Raises: nothing.
     Source: Kirkaldy & Venugopalan 1984 (from memory); I(1) = 4.3589 is its reciprocal's integral.

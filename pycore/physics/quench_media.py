@@ -89,7 +89,7 @@ def quench_coefficient(medium, kind, bath_C, agitation):
     """The heat-transfer curve of any medium of the house.
 
     Inputs: medium id; kind "water", "oil", "gas" or "plates" (media.csv); bath_C; agitation word.
-    Returns: (surface_C, h_W_m2K), two arrays of one length.
+    Returns: (surface_C in °C, h_W_m2K in W/m2K), two arrays of one length.
     Valid: as liquid_coefficient and air_coefficient; plates clamped flat on both faces, scale lowers it.
     Raises: ValueError where the medium is unknown.
     Source: the two functions above; Incropera table 3.1 for plates (from memory).

@@ -122,7 +122,7 @@ def constant(density_kg_m3, conductivity_W_mK, specific_heat_J_kgK):
     """Material with constant properties, for checks against the analytic series.
 
     Inputs: density_kg_m3, conductivity_W_mK, specific_heat_J_kgK, scalars > 0. Returns: Material.
-    Valid: any positive values. Raises: nothing. Source: definition.
+    Valid: any positive values. Raises: nothing. Source: definition of constant properties.
     """
     flat = lambda value: lambda T: np.full_like(np.asarray(T, float), value)  # noqa: E731
     return Material(density_kg_m3, flat(conductivity_W_mK), flat(specific_heat_J_kgK))

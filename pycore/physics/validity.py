@@ -25,6 +25,6 @@ def outside(values, ranges):
 def say(found):
     """The ranges left, as one phrase for a mark: "C 1 (0.1 to 0.65)".
 
-    Inputs: found, what `outside` returned. Returns: text. Valid: any. Raises: nothing. Source: our own.
+    Inputs: found, what `outside` returned. Returns: text. Valid: any. Raises: nothing. Source: wording of our own.
     """
     return ", ".join(f"{name} {value:.3g} ({low:g} to {high:g})" for name, value, low, high in found)

@@ -4,6 +4,8 @@ The heat line is laid out here, in Python, so that nothing on it can overlap; fo
 widths of the sheet's own typeface are needed. Read once from the two font files in fonts/ (units of
 1/1000 em); a glyph the face lacks counts as a wide one.
 """
+import functools
+
 POINT_MM = 25.4 / 72
 
 CODES = (
@@ -41,23 +43,28 @@ BOLD = (
     563, 300, 300, 300, 314, 588, 571, 576, 576, 576, 576, 576, 595, 576, 567, 567, 567, 567, 521, 596, 521,
     678, 300, 1024, 936, 468, 343, 450, 0, 0, 0, 0, 0, 156, 501, 832, 269, 269, 269, 479, 479, 479, 438, 780,
     394, 394, 617, 678, 942,)
-UNKNOWN = 700
+UNKNOWN = 0.7      # of the em
 CAP_HEIGHT = 0.668   # of the em, both weights
 
-_WIDTHS = {chr(code): pair for code, pair in zip(CODES, zip(REGULAR, BOLD))}
+_WIDTHS = tuple({chr(code): width / 1000 for code, width in zip(CODES, widths)} for widths in (REGULAR, BOLD))
+
+
+@functools.lru_cache(maxsize=4000)
+def ems(text, bold=False):
+    """The length of one line of `text` as a multiple of the type size."""
+    widths = _WIDTHS[bool(bold)]
+    return sum([widths.get(char, UNKNOWN) for char in text])
 
 
 def width_mm(text, size_pt, bold=False):
     """The length of one line of `text` in mm, set in `size_pt` points."""
-    column = 1 if bold else 0
-    units = sum(_WIDTHS[char][column] if char in _WIDTHS else UNKNOWN for char in text)
-    return units / 1000 * size_pt * POINT_MM
+    return ems(text, bold) * size_pt * POINT_MM
 
 
 def wrap(text, size_pt, room_mm, bold=False):
     """`text` broken into lines no wider than `room_mm`; a word longer than a line is cut."""
     lines, line = [], ""
-    for word in text.split():
+    for word in text.split(" "):
         while width_mm(word, size_pt, bold) > room_mm and len(word) > 1:
             head = len(word)
             while head > 1 and width_mm(word[:head], size_pt, bold) > room_mm:
@@ -73,21 +80,26 @@ def wrap(text, size_pt, room_mm, bold=False):
             line = word
         else:
             line = joined
-    return lines + [line] if line else lines
+    return [*lines, line] if line else lines
+
+
+@functools.lru_cache(maxsize=500)
+def words_of(text, bold):
+    """The words of `text` and their lengths in ems."""
+    return tuple([ems(word, bold) for word in text.split(" ") if word])
 
 
 def count_lines(runs, size_pt, room_mm):
     """How many lines a paragraph takes that is set partly bold: `runs` is a list of (text, bold)."""
-    used, count = 0.0, 1
+    room, used, count = room_mm / (size_pt * POINT_MM), 0.0, 1
     for text, bold in runs:
-        space = width_mm(" ", size_pt, bold)
-        for word in text.split(" "):
-            word_mm = width_mm(word, size_pt, bold)
-            if used and used + space + word_mm > room_mm:
+        space = _WIDTHS[bool(bold)][" "]
+        for word in words_of(text, bold):
+            if used and used + space + word > room:
                 count, used = count + 1, 0.0
-            while word_mm > room_mm:
-                count, word_mm = count + 1, word_mm - room_mm
-            used += (space if used else 0) + word_mm
+            while word > room:
+                count, word = count + 1, word - room
+            used += word + space if used else word
     return count if used else 0
 
 

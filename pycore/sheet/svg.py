@@ -49,11 +49,12 @@ def link(target, *children):
     return element("a", *children, href=target, class_="why") if target else Markup("").join(children)
 
 
-def drawing(name, title, description, width_mm, height_mm, *children):
-    """A whole picture with its name and a description in words for those who cannot see it."""
+def drawing(name, title, description, width_mm, height_mm, *children, role="img"):
+    """A whole picture with its name and a description in words for those who cannot see it. One that holds
+    links is a "group", for a reader takes an "img" as one thing and would hide them."""
     return element("svg", element("title", escape(title), id=f"{name}-title"),
                    element("desc", escape(description), id=f"{name}-desc"), *children,
-                   viewBox=f"0 0 {mm(width_mm)} {mm(height_mm)}", role="img", class_=name,
+                   viewBox=f"0 0 {mm(width_mm)} {mm(height_mm)}", role=role, class_=name,
                    aria_labelledby=f"{name}-title {name}-desc")
 
 
@@ -65,3 +66,15 @@ def triangle(class_="sign"):
         element("path", d="M8 5.6V10", fill="none", stroke="currentColor", stroke_width="1.7", stroke_linecap="round"),
         element("circle", cx="8", cy="12.3", r="1", fill="currentColor"),
         viewBox="0 0 16 16", class_=class_, aria_hidden="true")
+
+
+def octagon(x, y, radius, class_):
+    """The sign for a hold point: stop here and check."""
+    k = radius * 0.414
+    corners = [(-k, -radius), (k, -radius), (radius, -k), (radius, k), (k, radius), (-k, radius), (-radius, k), (-radius, -k)]
+    return polyline([(x + a, y + b) for a, b in corners], class_, closed=True)
+
+
+def stop_sign():
+    """The octagon as a picture of its own, to stand before words."""
+    return element("svg", octagon(8, 8, 6.6, "stop-mark"), viewBox="0 0 16 16", class_="sign", aria_hidden="true")

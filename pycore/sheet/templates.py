@@ -40,4 +40,4 @@ def template(name):
 def compiled_modules():
     """File name -> Python source for every template: the build may put these next to this file
     (in the packed copy, never in the repository), which saves the compiling at start-up."""
-    return {module_name(name) + ".py": environment().compile(read(name), name, name, raw=True) for name in NAMES}
+    return {module_name(name) + ".py": environment().compile(read(name), name, name, raw=True, defer_init=True) for name in NAMES}

@@ -10,7 +10,20 @@ from . import svg
 from .fit import fit, title_size
 from .heatline import stations_of
 from .section import draw_section, nothing_to_draw
-from .words import NOT_COMPUTED, WHOLE, HRC_middle, HRC_range, both_units, clean, fahrenheit, is_number, number, span
+from .words import (
+    NOT_COMPUTED,
+    WHOLE,
+    HRC_middle,
+    HRC_range,
+    both_units,
+    bound,
+    clean,
+    fahrenheit,
+    is_number,
+    number,
+    seconds,
+    span,
+)
 
 PRINTED_CAUTIONS = 6
 VERDICTS = {"reachable": "Within reach", "borderline": "Borderline", "out-of-reach": "Out of reach"}
@@ -18,6 +31,7 @@ SIGNALS = ("danger", "warning", "caution")
 PLACES = (("surface", "surface"), ("midradius", "mid-radius"), ("centre", "centre"))
 UNITS = (("_C_per_s", "°C/s"), ("_C_pct", "% C"), ("_C", "°C"), ("_min", "min"), ("_s", "s"), ("_mm", "mm"), ("_L", "L"),
          ("_pct", "%"), ("HRC", "HRC"))
+DIFFERENCE = re.compile(r"rise|error|accuracy|margin|below|above|step")
 # The note that stands behind the "at" and the "how long" of a step.
 STEP_AT = {"austenitize": "austenitize.temperature_C", "transfer": "quench.bath_C", "out": "quench.out_of_bath_C",
            "check": "as_quenched.surface.HRC", "temper": "temper.temperature_C", "final-check": "final.surface.HRC",
@@ -88,9 +102,10 @@ class Reader:
         address, outside = self.link_to(path)
         text = ("~" if outside and not text.startswith("~") else "") + text
         if together:
-            words = Markup(' <span class="dot">·</span> ').join(
-                Markup('<span class="whole">{}</span>').format(part) if len(part) <= WHOLE else escape(part)
-                for part in text.split(" · "))
+            *before, last = text.split(" · ")
+            parts = [part + " ·" for part in before] + [last]      # the dot stays with what it follows
+            words = Markup(" ").join(Markup('<span class="whole">{}</span>').format(part) if len(part) <= WHOLE else escape(part)
+                                     for part in parts)
         else:
             words = escape(text)
         return Markup('<a class="why" href="{}">{}</a>').format(address, words) if address else words
@@ -118,16 +133,16 @@ def view_of(plan):
     cautions = cautions_of(plan)
     letters = {caution["id"]: caution["letter"] for caution in cautions if caution["letter"]}
     verdict = plan.get("verdict") if plan.get("verdict") in VERDICTS else "borderline"
-    reasons = texts_of(plan.get("reasons"))
+    reasons = [bound(text) for text in texts_of(plan.get("reasons"))]
     title = clean(plan.get("title")) or "Untitled job"
     quantity = plan.get("quantity")
     heading = f"{title}, {number(quantity, 9)} pieces" if is_number(quantity) and quantity > 1 else title
-    summary = {name: clean(part_of(plan, "summary").get(name)) for name in ("steel", "part", "aim", "shop")}
+    summary = {name: bound(clean(part_of(plan, "summary").get(name))) for name in ("steel", "part", "aim", "shop")}
     view = {
         "heading": heading, "title_pt": title_size(heading), "summary": summary,
         "aim": aim_of(plan), "verdict": verdict, "verdict_word": VERDICTS[verdict],
         "reasons": reasons,
-        "alternatives": [{"what": clean(row.get("what")), "gives": clean(row.get("gives"))}
+        "alternatives": [{"what": bound(clean(row.get("what"))), "gives": bound(clean(row.get("gives"))).rstrip(".")}
                          for row in rows_of(plan.get("alternatives"))],
         "framed": verdict != "reachable",
         "stations": stations_of(plan, reader.link_to),
@@ -137,11 +152,12 @@ def view_of(plan):
                       "after": reader.shown(f"final.{key}.HRC", HRC_range(reader.value(f"final.{key}")))}
                      for key, name in PLACES],
         "facts": facts_of(plan, reader),
-        "faults": [{name: clean(row.get(name)) for name in ("sign", "cause", "then")} for row in rows_of(plan.get("faults"))],
+        "faults": [{"sign": bound(clean(row.get("sign"))), "cause": sentence(bound(clean(row.get("cause")))),
+                    "then": sentence(bound(clean(row.get("then"))))} for row in rows_of(plan.get("faults"))],
         "cautions": [caution for caution in cautions if caution["letter"]],
-        "more_cautions": sum(1 for caution in cautions if not caution["letter"]),
+        "more_cautions": more_of(sum(1 for caution in cautions if not caution["letter"])),
         "all_cautions": cautions,
-        "sign": svg.triangle(),
+        "sign": svg.triangle(), "stop": svg.stop_sign(),
         "readings": 3,
         "foot": " · ".join(part for part in (clean(plan.get("date")), f"job {clean(plan.get('id'))}",
                                               f"Quenchwright {clean(plan.get('version'))}") if part),
@@ -171,8 +187,8 @@ def cautions_of(plan):
     found = []
     for row in rows:
         signal = row.get("signal") if row.get("signal") in SIGNALS else "caution"
-        found.append({"id": clean(row.get("id")), "signal": signal, "text": clean(row.get("text")),
-                      "because": sentence(clean(row.get("because"))), "source": clean(row.get("source")), "letter": ""})
+        found.append({"id": clean(row.get("id")), "signal": signal, "text": bound(clean(row.get("text"))),
+                      "because": sentence(bound(clean(row.get("because")))), "source": clean(row.get("source")), "letter": ""})
     found.sort(key=lambda caution: SIGNALS.index(caution["signal"]))
     dangers = sum(caution["signal"] == "danger" for caution in found)
     for index, caution in enumerate(found[:max(PRINTED_CAUTIONS, dangers)]):
@@ -187,15 +203,19 @@ def sentence(text):
     return text[0].upper() + text[1:] + ("" if text[-1] in ".!?…" else ".")
 
 
+def more_of(count):
+    return f"({count} more in the notes on screen.)" if count else ""
+
+
 def step_of(row, reader, letters):
     kind = clean(row.get("id"))
-    do = clean(row.get("do"))
-    at, time = unsaid(clean(row.get("at")), do), unsaid(clean(row.get("time")), do)
+    do = bound(clean(row.get("do")))
+    at, time = unsaid(bound(clean(row.get("at"))), do), unsaid(bound(clean(row.get("time"))), do)
     known = row.get("cautions") if isinstance(row.get("cautions"), list) else []
     return {
         "n": clean(row.get("n")), "do": do, "hold": row.get("hold") is True,
-        "at": reader.shown(STEP_AT.get(kind, ""), at, together=True),
-        "time": reader.shown(STEP_TIME.get(kind, ""), time, together=True), "at_text": at, "time_text": time, "look": clean(row.get("look")),
+        "at": reader.shown(STEP_AT.get(kind, ""), at + (" ·" if at and time else ""), together=True),
+        "time": reader.shown(STEP_TIME.get(kind, ""), time, together=True), "at_text": at, "time_text": time, "look": bound(clean(row.get("look"))),
         "blanks": [part.strip() for part in clean(row.get("blank")).split(" / ") if part.strip()] or ["was"],
         "cautions": sorted({letters[name] for name in known if isinstance(name, str) and name in letters}),
     }
@@ -250,7 +270,7 @@ def facts_of(plan, reader):
             fact("flash point", reader.temperature("quench.flash_C"))
         told = any(step.get("id") == "out" for step in rows_of(plan.get("steps")))
         fact("out at", reader.temperature("quench.out_of_bath_C"), spare=told)
-        fact("after", reader.number("quench.time_in_bath_s", "s"), spare=told)
+        fact("after", reader.shown("quench.time_in_bath_s", seconds(quench.get("time_in_bath_s"))), spare=told)
     if austenitize:
         fact("Scale", reader.length("austenitize.scale_mm"), spare=True)
         fact("carbon lost", reader.length("austenitize.decarb_mm") + escape(" deep"))
@@ -278,7 +298,10 @@ def value_text(reader, path):
         return f"{HRC_range({'HRC': value})} HRC, most likely {HRC_middle({'HRC': value})}"
     unit = next((unit for ending, unit in UNITS if path.endswith(ending)), "")
     if is_number(value):
-        return both_units(value) if unit == "°C" else f"{number(value)} {unit}".strip()
+        if unit == "s":
+            return seconds(value)
+        # a rise or an error is a difference: it has no point on the other scale
+        return both_units(value) if unit == "°C" and not DIFFERENCE.search(path) else f"{number(value)} {unit}".strip()
     if isinstance(value, list) and len(value) == 2 and all(map(is_number, value)):
         return f"{span(*value)} {unit}".strip()
     return clean(value) if isinstance(value, str) else (NOT_COMPUTED if value is None else "")

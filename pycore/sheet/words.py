@@ -1,5 +1,6 @@
 """Numbers and texts of a plan as they stand on paper: rounded, with units, never a bare null."""
 import math
+import re
 
 NOT_COMPUTED = "not computed"
 WHOLE = 19        # a part of a line of this many characters or fewer is never broken
@@ -17,10 +18,18 @@ def clean(value):
     if isinstance(value, (int, float)):
         return number(value) if math.isfinite(value) else ""
     if isinstance(value, str):
-        return " ".join(value.split())
+        return re.sub(r"(?<![\w.])-(?=\d)", "−", " ".join(value.split()))    # a real minus sign
     if isinstance(value, (list, tuple)):
         return ", ".join(part for part in map(clean, value) if part)
     return ""
+
+
+UNIT_AFTER_NUMBER = re.compile(r"(?<=\d) (?=(?:°C|°F|%|mm|cm|kg|in|min|h|s|L|HRC)(?!\w))")
+
+
+def bound(text):
+    """`text` with every number held to its unit by a space that does not break."""
+    return UNIT_AFTER_NUMBER.sub("\u00a0", text)
 
 
 def number(value, digits=3):
@@ -46,6 +55,15 @@ def both_units(temperature_C):
     if not is_number(temperature_C):
         return NOT_COMPUTED
     return f"{number(round(temperature_C))} °C · {number(fahrenheit(temperature_C), 4)} °F"
+
+
+def seconds(value_s):
+    """A time in seconds as a shop says it: long ones in minutes or hours."""
+    if not is_number(value_s):
+        return NOT_COMPUTED
+    if value_s < 120:
+        return f"{number(value_s)} s"
+    return f"{number(value_s / 60, 2)} min" if value_s < 7200 else f"{number(value_s / 3600, 2)} h"
 
 
 def span(low, high):

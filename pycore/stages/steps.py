@@ -308,12 +308,17 @@ def _temper(job, quenched, temper):
 def _final(job, section, temper, aim_HRC, use):
     where = {"all": "", "edge": " at the edge", "tip": " at the tip"}[job.part.zone]
     body = f" {use['body'][0].upper()}{use['body'][1:]}." if use and use["body"] else ""
-    return _step(
-        "final-check",
-        f"{say.span(*aim_HRC)} HRC{where}",
-        "",
-        "",
-        f"Three readings through the skin, 3 mm apart, 3 mm from the edge.{body}",
-        "HRC",
-        True,
-    )
+    look = f"Three readings through the skin, 3 mm apart, 3 mm from the edge.{body}"
+    expected, aim = temper.final["surface"]["HRC"], say.span(*aim_HRC)
+    if expected["mid"] is not None and not aim_HRC[0] - 0.5 <= expected["mid"] <= aim_HRC[1] + 0.5:
+        side = "harder" if expected["mid"] > aim_HRC[1] else "softer"
+        return _step(
+            "final-check",
+            f"Expect {say.span(expected['low'], expected['high'])} HRC{where}",
+            f"the aim is {aim}",
+            "",
+            f"{side.capitalize()} than the aim: settle that before it goes into use. {look}",
+            "HRC",
+            True,
+        )
+    return _step("final-check", f"{aim} HRC{where}", "", "", look, "HRC", True)

@@ -82,7 +82,8 @@ class Watched:
         return self
 
     def sheet_text(self) -> str:
-        return self.page.locator("#paper").inner_text()
+        """The sheet's words, with every space an ordinary one."""
+        return self.page.locator("#paper").inner_text().replace("\u00a0", " ")
 
     def sheet_html(self) -> str:
         return self.page.locator("#paper").inner_html()
@@ -158,6 +159,13 @@ class Watched:
     def shoot(self, name: str, *, full_page: bool = False):
         SCREENS.mkdir(parents=True, exist_ok=True)
         self.page.screenshot(path=SCREENS / f"{name}.png", full_page=full_page)
+
+    def shoot_sheet(self, name: str):
+        """The page in a window high enough for the whole first page of the sheet."""
+        self.page.set_viewport_size({"width": DESKTOP["width"], "height": 1400})
+        self.page.evaluate("scrollTo(0, 0)")
+        self.shoot(name)
+        self.page.set_viewport_size(DESKTOP)
 
     def axe(self) -> list[str]:
         """What axe finds: every rule, every impact."""

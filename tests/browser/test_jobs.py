@@ -19,7 +19,7 @@ def test_cold_chisel_by_typing(watch, jobs):
     assert "56–59" in text
     assert "magnet" in text and "brine" in text.lower()
     assert "four" in page.heading().lower() or "4" in page.heading()
-    page.shoot("job-cold-chisel", full_page=True)
+    page.shoot_sheet("job-cold-chisel")
 
 
 def test_leaf_spring_by_typing_says_that_the_oven_cannot_reach(watch, jobs):
@@ -33,7 +33,7 @@ def test_leaf_spring_by_typing_says_that_the_oven_cannot_reach(watch, jobs):
     # The reason names the oven's limit and what the aim would need.
     assert re.search(r"260\s*°C", text)
     assert re.search(r"\b4\d\d\s*°C", text), "the temperature that the aim needs is missing"
-    page.shoot("job-leaf-spring", full_page=True)
+    page.shoot_sheet("job-leaf-spring")
 
 
 def test_punch_in_inches_by_typing(watch, jobs):
@@ -45,7 +45,7 @@ def test_punch_in_inches_by_typing(watch, jobs):
     assert "57–60" in text and "oil" in text.lower()
     # 1 in typed into a job in millimetres is 25.4 mm.
     assert "25.4 mm" in text
-    page.shoot("job-punch", full_page=True)
+    page.shoot_sheet("job-punch")
 
 
 def test_certificate_instead_of_grade(start):

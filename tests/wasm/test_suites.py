@@ -20,8 +20,8 @@ def pytest_in_wasm(node):
     import fetch
     import steps
 
-    wheels = fetch.Wheels(steps.Steps(0)).listed_for("wasm-tests")
-    wheels.append(fetch.Wheels(steps.Steps(0)).runtime()["packaging"])
+    source = fetch.Wheels(steps.Steps(0), node)
+    wheels = [*source.listed_for("wasm-tests"), source.runtime()["packaging"]]
     trees = [WORK / f"whole-{name}.tree" for name in ("numpy", "jinja2", "markupsafe")]
 
     def run(repo: Path, out: Path, *args: str) -> dict:

@@ -19,7 +19,7 @@ DEMO_SHEET = ROOT / "dist" / "demo-sheet.html"
 def test(build, rest: list[str]) -> int:
     """ruff, then every test in one pytest run; its last line is the total."""
     chromium = browser.find_chromium()
-    fetch.Wheels(build.steps, build.given).listed_for("wasm-tests")
+    fetch.Wheels(build.steps, build.node.node, build.given).listed_for("wasm-tests")
     print("\nruff")
     if _python("-m", "ruff", "check", "."):
         return 1

@@ -6,7 +6,7 @@ from pathlib import Path
 
 sys.path.insert(0, str(Path(__file__).resolve().parents[2]))
 
-from pycore.sheet import templates  # noqa: E402  (the repository is put on the path first)
+from pycore.sheet import templates
 
 # defer_init: the module must not ask for the environment before the template is made from it.
 json.dump({templates.module_name(name) + ".py":

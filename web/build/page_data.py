@@ -9,8 +9,8 @@ from pathlib import Path
 
 sys.path.insert(0, str(Path(__file__).resolve().parents[2]))
 
-import pycore  # noqa: E402  (the repository is put on the path first)
-from pycore import api, sheet  # noqa: E402
+import pycore
+from pycore import api, sheet
 
 
 def ask(request: dict) -> dict:

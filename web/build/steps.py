@@ -77,7 +77,7 @@ def remove(path: Path) -> None:
 
 
 def run(command: list[str | Path], failed: str, **options) -> str:
-    """Run a command quietly and return what it printed; on failure stop with ``failed`` and its last lines."""
+    """Run a command quietly and return what it printed; on failure stop with ``failed`` and what it said."""
     try:
         done = subprocess.run(
             [str(part) for part in command], cwd=options.pop("cwd", ROOT), text=True,
@@ -86,6 +86,9 @@ def run(command: list[str | Path], failed: str, **options) -> str:
     except OSError as error:
         raise Stop(f"{failed}\n{error}") from error
     if done.returncode:
-        tail = "\n".join("    " + line[:300] for line in done.stdout.strip().splitlines()[-15:])
-        raise Stop(f"{failed}\n  The command was: {' '.join(map(str, command))}\n  It said:\n{tail}")
+        said = [line[:300] for line in done.stdout.strip().splitlines()]
+        if len(said) > 16:
+            said[6:-8] = ["…"]
+        told = "\n".join("    " + line for line in said)
+        raise Stop(f"{failed}\n  The command was: {' '.join(map(str, command))}\n  It said:\n{told}")
     return done.stdout

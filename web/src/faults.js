@@ -28,8 +28,14 @@ function sayAtField({ path, value, expected, message }) {
   return missing(value) ? `Missing: give ${wanted}.` : `${shown(value)} does not fit: give ${wanted}.`;
 }
 
-/** A fault where there is no field to put it at (a file that was refused). */
-export const sayFault = (error) => error.message ?? `Expected ${error.expected}.`;
+/** A fault where there is no field to put it at. */
+export const sayFault = ({ expected, message }) => message ?? `Expected ${expected}.`;
+
+/** Why a file was refused: in the file itself, or in the job it holds. */
+export function sayFileFault(error) {
+  if (error.path !== "file" || !error.expected) return sayFault(error);
+  return missing(error.value) ? `It should be ${error.expected}.` : `Found ${shown(error.value)}; expected ${error.expected}.`;
+}
 
 /**
  * Show each fault at its field, and answer what the summary should list: [{text, field, wanting}].

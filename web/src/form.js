@@ -16,6 +16,8 @@ const CARDS = [
   { id: "shop", name: "Shop", sentence: shopSentence },
 ];
 const MOST_BATHS = 12;
+// Carbon to copper; what few certificates name stands folded below.
+const USUAL_ELEMENTS = 9;
 
 /** Echo a converted figure ("500 F" is 260 °C); say nothing when the bare number was typed. */
 const converted = (read, unit) => (text) => {
@@ -69,9 +71,13 @@ export function makeForm(root, catalogue, typedAtStart, { onChange, onRemoved })
   }
 
   function chemistryFields() {
-    const cells = catalogue.elements.map((element) => text(`steel.chemistry.${element}`, typed.chemistry, element, { label: `${element} %`, width: "narrow" }));
+    const cell = (element) => text(`steel.chemistry.${element}`, typed.chemistry, element, { label: `${element} %` });
+    const usual = catalogue.elements.slice(0, USUAL_ELEMENTS);
+    const rare = catalogue.elements.slice(USUAL_ELEMENTS);
+    const more = rare.length ? make("details", { class: "extra" }, make("summary", {}, "More elements"), make("div", { class: "row elements" }, rare.map(cell))) : null;
+    if (more) more.open = rare.some((element) => typed.chemistry[element]);
     return keep(group({ path: "steel.chemistry", legend: "From the certificate", hint: "Per cent by weight. Leave blank what the certificate leaves out." },
-      make("div", { class: "row elements" }, cells),
+      make("div", { class: "row elements" }, usual.map(cell)), more,
       text("steel.grain_size", typed, "grain_size", { label: "Grain size (ASTM number)", optional: true, width: "narrow" })));
   }
 

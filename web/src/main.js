@@ -3,7 +3,7 @@
 import { setUpAbout } from "./about.js";
 import { readCatalogue } from "./catalogue.js";
 import { byId, reveal } from "./dom.js";
-import { clearFaults, sayFault, showFaults } from "./faults.js";
+import { clearFaults, sayFileFault, showFaults } from "./faults.js";
 import { acceptDrops, download, readSheetFile } from "./files.js";
 import { makeForm } from "./form.js";
 import { emptyTyped, jobFromTyped, mendTyped, typedFromJob } from "./job.js";
@@ -117,21 +117,22 @@ function showPlan({ plan, sheet: html }) {
   notes.refresh();
   about.setPlan(plan);
   status.setSheet("current");
-  const range = plan?.aim?.HRC ? `${plan.aim.HRC[0]}–${plan.aim.HRC[1]} HRC ` : "";
+  status.planned();
+  const range = plan?.aim?.HRC ? `${plan.aim.HRC[0]}–${plan.aim.HRC[1]}\u00a0HRC ` : "";
   const verdict = VERDICT_WORDS[plan?.verdict];
-  status.say(verdict ? `The sheet is up to date: ${range}${verdict}.` : "The sheet is up to date.");
+  status.say(verdict ? `The sheet is up to date: ${range}${range ? "is " : ""}${verdict}.` : "The sheet is up to date.");
 }
 
 function showJobFaults(errors) {
   const show = () => {
-    const listed = showFaults(form, errors).map((item) => ({ ...item, place: item.card ? `${form.cardName(item.card)}${item.field?.label ? `, ${item.field.label}` : ""}` : "" }));
+    const listed = showFaults(form, errors).map((item) => ({ ...item, place: [item.card && form.cardName(item.card), item.field?.label].filter(Boolean).join(", ") }));
     const wrong = listed.filter((item) => !item.wanting);
     const text = wrong.length
       ? `${wrong.length === 1 ? "One thing" : `${wrong.length} things`} to mend. The sheet below is from before the change.`
       : "Fill in what is missing. The sheet below is from before.";
     status.list(text, listed, (field) => form.goTo(field));
   };
-  const typingIn = [...form.fields()].find((field) => field.control === document.activeElement && field.control.type === "text");
+  const typingIn = [...form.fields()].find((field) => field.control === document.activeElement && field.control.type === "text" && !field.blank());
   if (!typingIn) { show(); return; }
   faultTimer = setTimeout(show, FAULT_PATIENCE_ms);
 }
@@ -178,7 +179,7 @@ function showFailure({ phase, what, why, hint, technical } = {}) {
   status.say(status.sheet() === "example" ? "The planner is not running. The sheet below is only an example." : "The planner is not running. The sheet below does not match the job.", { aloud: false });
   status.showTrouble({
     heading: phase === "ready" ? "The planner stopped" : "The planner could not start",
-    lines: [what, why, hint, "The form still works and what you typed is kept. Saved sheets can still be opened and printed in any browser."],
+    lines: [what, why, hint, "The form still works and what you typed is kept."],
     technical: [phase && `phase: ${phase}`, technical, navigator.userAgent].filter(Boolean).join("\n"),
     again: () => startAgain(phase),
   });
@@ -257,7 +258,7 @@ byId("new-job").addEventListener("click", () => {
   form.foldAll();
   form.open("steel");
   jobChanged();
-  status.tell("The form is empty for a new job.", { undo: () => putBack(before) });
+  status.tell("The form is empty for a new job.", { undo: () => putBack(before), untilPlanned: true });
   form.fieldAt("steel.grade")?.focus();
 });
 
@@ -275,7 +276,7 @@ async function openFile(file) {
   await planner.whenSettled();
   const answer = await askCore({ do: "open", text });
   if (!answer.ok) {
-    const why = answer.bug ? `The planner stumbled over it (report ${answer.bug.id}).` : (answer.errors ?? []).map(sayFault).join(" ");
+    const why = answer.bug ? `The planner stumbled over it (report ${answer.bug.id}).` : (answer.errors ?? []).slice(0, 4).map(sayFileFault).join(" ");
     refuse(`${file.name} was not opened. ${why}`);
     return;
   }

@@ -1,7 +1,19 @@
 // The live sheet. This is the only place where markup is put into the page, and it comes from our own core,
 // which escapes everything a person typed.
 
+import { make } from "./dom.js";
+
+/** On the page the long notes stand folded: each number already shows its own note when it is pressed. */
+function foldNotes(paper) {
+  const notes = paper.querySelector(".sheet > section.notes");
+  if (!notes) return;
+  const fold = make("details", { class: "all-notes" }, make("summary", {}, "All notes: where the numbers come from"));
+  notes.replaceWith(fold);
+  fold.append(notes);
+}
+
 export function makeSheetView(paper) {
+  foldNotes(paper);
   const detailsOf = () => [...paper.querySelectorAll("details")];
 
   function focusedPlace() {
@@ -24,6 +36,7 @@ export function makeSheetView(paper) {
       const open = detailsOf().map((details) => details.open);
       const { scrollX, scrollY } = window;
       paper.innerHTML = html;
+      foldNotes(paper);
       detailsOf().forEach((details, index) => { if (open[index] !== undefined) details.open = open[index]; });
       focusAgain(focused);
       if (window.scrollX !== scrollX || window.scrollY !== scrollY) window.scrollTo(scrollX, scrollY);

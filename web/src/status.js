@@ -58,7 +58,8 @@ export function makeStatus() {
     },
 
     /** A line that stays until the next one; `undo` brings the job back as it was. */
-    tell(text, { undo, bad = false } = {}) {
+    tell(text, { undo, bad = false, untilPlanned = false } = {}) {
+      message.toggleAttribute("data-until-planned", untilPlanned);
       message.classList.toggle("bad", bad);
       message.replaceChildren(make("p", {}, text), make("div", { class: "message-buttons" },
         undo ? make("button", { type: "button", id: "undo", onclick: undo }, "Undo") : null,
@@ -69,6 +70,7 @@ export function makeStatus() {
     /** The job has moved on: a plain message goes, an offer to undo stays. */
     quiet() { if (!message.querySelector("#undo")) reveal(message, false); },
     hush() { reveal(message, false); },
+    planned() { if (message.hasAttribute("data-until-planned")) reveal(message, false); },
 
     /** Something of ours broke. Says what, what still works, what to try. */
     showTrouble({ heading, lines, technical, again, againLabel = "Try again" }) {

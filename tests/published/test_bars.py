@@ -1,0 +1,151 @@
+"""Whole quenches against print: critical diameters of W-type steel in brine, and hardness through bars of many sizes.
+
+The bars' heat analyses, grain sizes and hardness are recalled from the handbook ("from memory"), single heats; what
+stands here as a ceiling is what the program reaches today, rounded up by a tenth, so that it cannot get worse unseen.
+"""
+
+import csv
+import functools
+import pathlib
+
+import numpy as np
+import pytest
+
+from pycore.physics import conduction, hardenability, quench_media, steel_properties
+from pycore.plan import plan
+from pycore.stages.structure import jominy_rate_C_per_s
+
+DATA = pathlib.Path(__file__).parent / "data"
+W_HEATS = tuple(csv.DictReader(open(DATA / "w_heats.csv", encoding="utf-8", newline="")))  # noqa: SIM115
+BARS = tuple(csv.DictReader(open(DATA / "bars_by_size.csv", encoding="utf-8", newline="")))  # noqa: SIM115
+ELEMENTS = ("C", "Mn", "Si", "Ni", "Cr", "Mo", "V")
+# The handbook's agitated baths, in the house's media.
+BATHS = {"oil": ("medium-oil", "moderate"), "water": ("water", "moderate"), "brine": ("brine", "moderate")}
+
+
+def quenched(row, medium, diameter_mm, austenitize_C, grain_size):
+    """Plan of a bar with a certificate's chemistry; elements the source does not give take the program's residuals."""
+    bath, agitation = BATHS[medium]
+    return plan({
+        "steel": {"chemistry": {e: float(row[e]) for e in ELEMENTS if row[e]}, "grain_size": grain_size},
+        "part": {"shape": "round", "dimensions_mm": {"diameter": diameter_mm, "length": 6 * diameter_mm}, "condition": "normalized"},
+        "aim": {"hardness_HRC": [20, 68]},
+        "shop": {
+            "heat": {"kind": "kiln"},
+            "baths": [{"medium": bath, "agitation": agitation}],
+            "temper": {"kind": "kiln", "max_C": 700},
+        },
+        "decided": {"austenitize_C": austenitize_C},
+    }).to_json()["as_quenched"]
+
+
+@functools.lru_cache(maxsize=None)
+def critical_diameter_mm(heat):
+    """Largest round that is half martensite in its centre: brine 20 °C, moderate, from 790 °C, grain size 7."""
+    small, large = 1.0, 60.0
+    for _ in range(11):
+        middle = (small + large) / 2
+        phases = quenched(W_HEATS[heat], "brine", middle, 790, 7)["centre"]["phases"]
+        hard = phases["martensite"] + phases["retained_austenite"] >= 0.5
+        small, large = (middle, large) if hard else (small, middle)
+    return (small + large) / 2
+
+
+def w_ratio(heat):
+    return critical_diameter_mm(heat) / float(W_HEATS[heat]["critical_diameter_mm"])
+
+
+def test_w_type_critical_diameters_in_brine():
+    """Roberts, Krauss & Kennedy, Tool Steels, Table 7-3: within 30 % for at least 9 of the 12 heats. One factor of the
+    kinetics (carbide_nucleation) was set on these heats, so this guards it and does not prove it."""
+    ratios = np.array([w_ratio(heat) for heat in range(12)])
+    assert (abs(ratios - 1) <= 0.30).sum() >= 9, ratios
+
+
+def test_w_type_order_of_depth():
+    """Tool Steels, Table 7-3: shallow heats stay shallow and deep ones deep (rank correlation)."""
+    found = [critical_diameter_mm(heat) for heat in range(12)]
+    observed = [float(row["critical_diameter_mm"]) for row in W_HEATS]
+    ranks = [np.argsort(np.argsort(values)) for values in (found, observed)]
+    assert np.corrcoef(*ranks)[0, 1] > 0.85
+
+
+@functools.lru_cache(maxsize=None)
+def bar_errors(steel, medium):
+    """Calculated minus published HRC, and whether the published value lies in the band told, for one steel's bars."""
+    plans, errors, inside = {}, [], []
+    for row in BARS:
+        if (row["steel"], row["medium"]) != (steel, medium):
+            continue
+        D = float(row["diameter_mm"])
+        if D not in plans:
+            plans[D] = quenched(row, medium, D, float(row["austenitize_C"]), float(row["grain_size"]))
+        found, published = plans[D][row["position"]]["HRC"], float(row["HRC"])
+        errors.append(found["mid"] - published)
+        inside.append(found["low"] - 0.5 <= published <= found["high"] + 0.5)
+    return np.array(errors), np.array(inside)
+
+
+ALLOY = ("4130", "4140", "4340", "5140", "5160", "6150", "8740")
+# Bethlehem Steel, Modern Steels and Their Properties, rounds of 12.7 to 102 mm: steel, bath, ceiling of the mean error.
+CEILINGS = [
+    ("1030", "water", 9.3), ("1040", "oil", 6.9), ("1040", "water", 6.6), ("1050", "water", 7.7), ("1060", "oil", 3.9),
+    ("1080", "oil", 7.5), ("1095", "oil", 5.8), ("1095", "water", 8.3), ("1141", "oil", 7.5), ("1144", "oil", 17.5),
+    ("1340", "oil", 6.7), ("4130", "water", 1.7), ("4140", "oil", 6.8), ("4340", "oil", 1.4), ("5140", "oil", 4.7),
+    ("5160", "oil", 4.1), ("6150", "oil", 7.3), ("8740", "oil", 3.2),
+]  # fmt: skip
+
+
+@pytest.mark.parametrize("row", CEILINGS, ids=lambda r: f"Bethlehem, {r[0]} {r[1]}")
+def test_bars_by_size(row):
+    steel, medium, ceiling = row
+    errors, _ = bar_errors(steel, medium)
+    assert abs(errors).mean() <= ceiling
+
+
+def test_bars_by_size_all_together():
+    """Bethlehem, 198 values of 18 bars: mean error under 6.3 HRC (reached 5.7), and 2.5 HRC over the steels and sizes that a
+    small shop hardens through: alloy steel to 25 mm."""
+    everything = np.concatenate([bar_errors(steel, medium)[0] for steel, medium, _ in CEILINGS])
+    assert len(everything) == 198 and abs(everything).mean() <= 6.3
+    small = np.concatenate([bar_errors(steel, medium)[0][:6] for steel, medium, _ in CEILINGS if steel in ALLOY])
+    assert abs(small).mean() <= 2.5
+
+
+# SAE J1268 / ASTM A304 chart header: round (in) whose place hardens as a Jominy station, mild agitation (from memory).
+OIL_CENTRE = [(0.6, 4), (1.0, 6), (1.4, 8), (1.7, 10), (2.0, 12)]
+OIL_THREE_QUARTERS = [(1.0, 4), (1.6, 6), (2.0, 8), (2.4, 10), (2.8, 12)]
+OIL_SURFACE = [(0.8, 2), (1.8, 4), (2.5, 6), (3.0, 8), (3.8, 12)]
+WATER_CENTRE = [(1.2, 4), (1.6, 6), (2.0, 8), (2.4, 10), (2.8, 12)]
+WATER_THREE_QUARTERS = [(2.0, 4), (2.9, 6), (3.8, 8)]
+
+
+def jominy_station(medium, diameter_in, place):
+    bath, agitation = BATHS[medium]
+    bath_C = 60.0 if medium == "oil" else 20.0
+    surface, h = quench_media.quench_coefficient(bath, medium, bath_C, agitation)
+    history = conduction.conduct(
+        "cylinder", diameter_in * 12.7, steel_properties.on_quenching(), 845.0,
+        lambda T, time: (np.interp(T, surface, h), np.full_like(T, bath_C)), until=lambda T: T.max(axis=1) < 300, end_s=9000.0,
+    )
+    rate = jominy_rate_C_per_s(history.case()[0], np.array([history.at(place)]))
+    return float(hardenability.jominy_distance_sixteenths(rate)[0])
+
+
+@pytest.mark.parametrize(
+    ("medium", "place", "chart"),
+    [("oil", 0.0, OIL_CENTRE), ("oil", 0.75, OIL_THREE_QUARTERS), ("water", 0.0, WATER_CENTRE), ("water", 0.75, WATER_THREE_QUARTERS)],
+    ids=["SAE J1268 oil centre", "SAE J1268 oil 3/4 radius", "SAE J1268 water centre", "SAE J1268 water 3/4 radius"],
+)
+def test_equivalent_jominy_station(medium, place, chart):
+    """Published charts differ among themselves by 2/16 in; so may this."""
+    for diameter_in, J in chart:
+        assert jominy_station(medium, diameter_in, place) == pytest.approx(J, abs=2.2), (diameter_in, J)
+
+
+def test_skin_of_thick_bars_in_oil_is_told_too_hard():
+    """SAE J1268, surface in mild oil: J12 at 3.8 in, where the curve gives about J5.5. Right within 3/16 to 2.5 in; beyond,
+    a known fault of the heat-transfer curve (ceiling 7/16)."""
+    errors = [jominy_station("oil", D, 1.0) - J for D, J in OIL_SURFACE]
+    assert max(abs(e) for e in errors[:3]) <= 3.0
+    assert max(abs(e) for e in errors) <= 7.0
