@@ -2,6 +2,7 @@
 
 import hashlib
 import json
+import re
 import traceback
 
 from pycore import DATA_EDITION, __version__, words
@@ -11,23 +12,33 @@ from pycore.job import LARGEST_LENGTH_MM, parse_job
 from pycore.plan import plan
 from pycore.reading import LARGEST_MM, SMALLEST_MM
 
+DATE = re.compile(r"[0-9]{4}-(0[1-9]|1[0-2])-(0[1-9]|[12][0-9]|3[01])")
+
 
 def run(request_text):
     """Answer a request {"do": plan | save | open | catalogue, …}; faults and crashes are answers too."""
     try:
-        request = json.loads(request_text)
-        if not isinstance(request, dict) or request.get("do") not in ACTIONS:
-            raise InputErrors(
-                [Fault("do", request.get("do") if isinstance(request, dict) else None, "one of " + ", ".join(ACTIONS))]
-            )
+        request = _request(request_text)
         answer = {"ok": True, **ACTIONS[request["do"]](request)}
     except InputErrors as errors:
         answer = {"ok": False, "errors": errors.to_json()}
-    except json.JSONDecodeError as error:
-        answer = {"ok": False, "errors": [Fault("request", str(error), "JSON text").to_json()]}
     except Exception as error:  # a bug of ours must reach the page as an answer, not kill the worker
         answer = {"ok": False, "bug": _bug(error)}
     return json.dumps(answer, ensure_ascii=False, allow_nan=False)
+
+
+def _request(text):
+    """The request as a dictionary with a known action."""
+    try:
+        request = json.loads(text)
+    except RecursionError:
+        raise InputErrors([Fault("request", "nested too deeply", "JSON text")]) from None
+    except ValueError as error:
+        raise InputErrors([Fault("request", str(error), "JSON text")]) from None
+    action = request.get("do") if isinstance(request, dict) else None
+    if not isinstance(action, str) or action not in ACTIONS:
+        raise InputErrors([Fault("do", action, "one of " + ", ".join(ACTIONS))])
+    return request
 
 
 def _bug(error):
@@ -66,10 +77,9 @@ def _open(request):
 
 
 def _date(request):
-    """Today as the browser told it, only if it looks like a date."""
+    """Today as the browser told it, only if it is a date."""
     date = request.get("date")
-    good = isinstance(date, str) and len(date) == 10 and date[4] == date[7] == "-" and date.replace("-", "").isdigit()
-    return date if good else None
+    return date if isinstance(date, str) and DATE.fullmatch(date) else None
 
 
 def _named(ids):

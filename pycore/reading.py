@@ -35,7 +35,8 @@ class Reader:
         if not isinstance(value, str) or len(value) > LONGEST_TEXT:
             self.fault(path, value, f"text of at most {LONGEST_TEXT} characters")
             return default
-        return " ".join(value.split())
+        # Control characters and halves of surrogate pairs have no place on paper and cannot be written to a file.
+        return " ".join("".join(c if c.isprintable() else " " for c in value).split())
 
     def word(self, holder, name, path, allowed, default=None):
         value = holder.get(name)

@@ -39,7 +39,7 @@ def quenched(row, medium, diameter_mm, austenitize_C, grain_size):
     }).to_json()["as_quenched"]
 
 
-@functools.lru_cache(maxsize=None)
+@functools.cache
 def critical_diameter_mm(heat):
     """Largest round that is half martensite in its centre: brine 20 °C, moderate, from 790 °C, grain size 7."""
     small, large = 1.0, 60.0
@@ -70,7 +70,7 @@ def test_w_type_order_of_depth():
     assert np.corrcoef(*ranks)[0, 1] > 0.85
 
 
-@functools.lru_cache(maxsize=None)
+@functools.cache
 def bar_errors(steel, medium):
     """Calculated minus published HRC, and whether the published value lies in the band told, for one steel's bars."""
     plans, errors, inside = {}, [], []

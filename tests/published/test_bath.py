@@ -10,7 +10,7 @@ WATER = {"density_kg_L": 0.995, "heat_capacity_kJ_kgK": 4.18}
 
 def test_oil_rule_of_one_gallon_a_pound():
     """1 US gal/lb = 8.35 L/kg raises the oil about 38 °C (70 °F): MacKenzie, Thermal Processing, Revisiting the 1:1 rule."""
-    assert 231 * 0.0163871 / 0.45359237 == pytest.approx(bath.OIL_RULE_L_PER_KG, abs=0.01)  # 1 US gal is 231 in3
+    assert pytest.approx(bath.OIL_RULE_L_PER_KG, abs=0.01) == 231 * 0.0163871 / 0.45359237  # 1 US gal is 231 in3
     assert 37 <= float(bath.bath_rise_K(1.0, 850, 60, 8.35, **MINERAL_OIL)) <= 41
 
 

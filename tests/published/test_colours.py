@@ -14,7 +14,7 @@ WORKING_OF_STEEL_1921 = [
 
 def test_first_glow():
     """Common practice: steel just begins to glow near 540 °C in subdued light (Stirling 1905: 525)."""
-    assert colours.FIRST_GLOW_C == pytest.approx(540, abs=20)
+    assert pytest.approx(540, abs=20) == colours.FIRST_GLOW_C
     first = colours.heat_colour(540)
     assert first is not None and "faint" in first
     assert colours.heat_colour(380) is None
@@ -22,7 +22,7 @@ def test_first_glow():
 
 def test_magnet_lets_go():
     """Common practice: a magnet lets go near 770 °C (Curie point of ferrite 769-770 °C)."""
-    assert colours.MAGNET_LETS_GO_C == pytest.approx(770, abs=2)
+    assert pytest.approx(770, abs=2) == colours.MAGNET_LETS_GO_C
 
 
 @pytest.mark.parametrize(

@@ -1,5 +1,7 @@
 """Decomposition of austenite against the papers' own check values and textbook cooling rates."""
 
+import itertools
+
 import numpy as np
 import pytest
 
@@ -147,7 +149,7 @@ def test_eutectoid_without_residuals_is_too_fast():
 def test_slower_is_softer():
     rates = (2.0, 10.0, 40.0, 160.0, 640.0)
     soft = [sum(float(cooled(r)[name][0]) for name in ("ferrite", "pearlite", "bainite")) for r in rates]
-    assert all(a >= b - 1e-9 for a, b in zip(soft, soft[1:]))
+    assert all(a >= b - 1e-9 for a, b in itertools.pairwise(soft))
     assert soft[0] == pytest.approx(1.0, abs=0.01) and soft[-1] < 0.01
 
 

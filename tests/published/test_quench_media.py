@@ -1,5 +1,7 @@
 """Heat transfer of the baths: published anchors and the behaviour every shop knows."""
 
+import itertools
+
 import numpy as np
 import pytest
 
@@ -55,7 +57,7 @@ def test_water_loses_its_bite_when_warm():
     """ASM Handbook 4 (Bates & Totten): still water at 700 °C falls from 5000 to 1000 W/m2K between 32 and 55 °C; the
     curve must lose at least three parts in four of it between 20 and 55 °C, and more with every degree."""
     values = [h("water", T, 700.0) for T in (20, 32, 40, 55, 60)]
-    assert all(a > b for a, b in zip(values, values[1:]))
+    assert all(a > b for a, b in itertools.pairwise(values))
     assert values[0] / values[3] > 4
 
 
@@ -109,7 +111,7 @@ def test_media_in_the_order_of_the_trade():
     """Air, oil, water, brine: the old order of severity (Grossmann & Bain)."""
     rates = [rate_at_704(m, k, 20 if k != "oil" else 60, "moderate", 25.0, place=0.5) for m, k in
              (("still-air", "gas"), ("fan-air", "gas"), ("medium-oil", "oil"), ("fast-oil", "oil"), ("water", "water"), ("brine", "water"))]
-    assert all(a < b for a, b in zip(rates, rates[1:])), rates
+    assert all(a < b for a, b in itertools.pairwise(rates)), rates
 
 
 @pytest.mark.parametrize(
