@@ -9,7 +9,7 @@ class Fault:
     __slots__ = ("expected", "path", "value")
 
     def __init__(self, path, value, expected):
-        self.path, self.value, self.expected = path, value, expected
+        self.path, self.value, self.expected = writable(path), value, expected
 
     @property
     def message(self):
@@ -35,9 +35,14 @@ class InputErrors(ValueError):
         return [fault.to_json() for fault in self.faults]
 
 
+def writable(text):
+    """Text that any file can take: halves of surrogate pairs, legal in JSON, become a question mark."""
+    return text.encode("utf-8", "replace").decode("utf-8")
+
+
 def show(value, longest=60):
     """A value as it may stand in a message: short, and never markup of its own."""
-    text = value if isinstance(value, str) else repr(value)
+    text = writable(value if isinstance(value, str) else repr(value))
     text = " ".join(text.split())
     return (
         repr(text if len(text) <= longest else text[: longest - 1] + "…")
@@ -52,4 +57,4 @@ def plain(value):
         return str(value)
     if value is None or isinstance(value, (bool, int, float)):
         return value
-    return value[:200] if isinstance(value, str) else show(value, 200)
+    return writable(value[:200]) if isinstance(value, str) else show(value, 200)

@@ -15,8 +15,13 @@ import { gunzipTo } from "./src/unpack.js";
 
 // Not an address: every name under it is answered from memory, below.
 const BASE = "embedded:/";
-const VERSIONS = `
-import json, platform, numpy, pycore
+// No collecting of garbage while modules load: nothing of theirs is garbage. What they
+// made is then set apart, so that later collections need not look at it either.
+const BEFORE = "import gc; gc.disable()";
+const AFTER = `
+import gc, json, platform, numpy, pycore
+gc.freeze()
+gc.enable()
 json.dumps({"python": platform.python_version(), "numpy": numpy.__version__,
             "quenchwright": pycore.__version__, "data": pycore.DATA_EDITION})`;
 
@@ -78,10 +83,11 @@ async function start({ lock, trees }) {
   });
   for (const name of trees) lay(pyodide.FS, await part(name).promise);
   say({ kind: "phase", name: "core" });
+  pyodide.runPython(BEFORE);
   const api = pyodide.pyimport("pycore.api");
   run = api.run.copy(); // a proxy of its own: the module's is let go
   api.destroy();
-  const versions = JSON.parse(pyodide.runPython(VERSIONS));
+  const versions = JSON.parse(pyodide.runPython(AFTER));
   say({ kind: "ready", versions: { ...versions, pyodide: pyodide.version } });
 }
 

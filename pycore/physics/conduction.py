@@ -131,13 +131,28 @@ def conduct(
         H_before, T_before = np.where(hold, H, H_before), np.where(hold, T, T_before)
         H, T = np.where(hold, H_new, H), np.where(hold, T_new, T)
         time = np.where(running, time + step, time)
+        ended = running & until(T)
+        if ended.any():  # the last step is cut where the end was reached, or times would be told up to a third too long
+            share = np.where(ended, _share_of_step(until, T_before, T), 1.0)
+            T = np.where(ended[:, None], T_before + share[:, None] * (T - T_before), T)
+            time = time - (1 - share) * step
         times.append(time.copy())
         temperatures.append(T)
         step_before = step.copy()
         growth = np.clip(largest_change_K / np.maximum(change, 1e-6), 0.4, LARGEST_GROWTH)
         step = np.maximum(step * growth, SMALLEST_STEP_S)
-        running = running & ~until(T) & (time < end * (1 - 1e-12))
+        running = running & ~ended & (time < end * (1 - 1e-12))
     return History(mesh.x, np.array(times).T, np.swapaxes(np.array(temperatures), 0, 1))
+
+
+def _share_of_step(until, before, after):
+    """The share of a step after which `until` first holds, taking temperatures as linear within it."""
+    low, high = np.zeros(len(before)), np.ones(len(before))
+    for _ in range(8):
+        middle = (low + high) / 2
+        reached = until(before + middle[:, None] * (after - before))
+        low, high = np.where(reached, low, middle), np.where(reached, middle, high)
+    return high
 
 
 def _effective_heat(material, T, guess):

@@ -15,7 +15,7 @@ PAPERS = (("letter", 279.4 - 20 - 1.8), ("a4", 297 - 20 - 1.8))
 # largest number on the heat line in pt. From 4 on, what also stands elsewhere is left out on paper, from 6 on
 # the headings of the foot, in 8 the reasons of cautions less than a danger, in 9 all (the notes keep them).
 SIZES = ((1, 11.5, 10, 1.0, 46), (2, 11, 10, 0.9, 42), (3, 10.5, 9.5, 0.8, 40), (4, 10, 9.5, 0.7, 38),
-         (5, 9.5, 9, 0.55, 34), (6, 9.5, 9, 0.4, 32), (7, 9.5, 8.5, 0.35, 32), (8, 9.5, 8.5, 0.3, 32), (9, 9.5, 8.5, 0.3, 32))
+         (5, 9.5, 9, 0.55, 34), (6, 9.5, 9, 0.4, 32), (7, 9.5, 8.5, 0.35, 32), (8, 9.5, 8.5, 0.3, 32), (9, 9.5, 8.5, 0.2, 32))
 SPARE_PAD = 0.8                # what is left of the page goes to the steps, at most so many mm above and below each
 TITLE_SIZES = ((28, 1), (24, 1), (20, 1), (17, 2), (14, 2), (12, 3))
 SHEET_MM, HEAD_MM, CARE_MM, LEFT_MM = 190, 122, 124.5, 50
@@ -81,15 +81,15 @@ def height_of(view, size, line_mm):
     template; and whether the facts go under the hardness."""
     number, bench_pt, foot_pt, _, _ = size
     foot, dense = foot_pt * POINT_MM * LEADING, number >= 4
-    title = min(view["title_pt"], 24) if dense else view["title_pt"]
+    title = min(view["title_pt"], 22 if number == 9 else 24) if dense else view["title_pt"]
     head_pt = 9.5 if dense else 10
     head = head_pt * POINT_MM * LEADING
-    total = max(title * POINT_MM * 1.05 * lines(view["heading"], title, HEAD_MM, True), 10.6) + 2.2
+    total = max(title * POINT_MM * 1.05 * lines(view["heading"], title, HEAD_MM, True), 9.2 if number == 9 else 10.6) + 2.2
     total += head * lines(f"{view['summary']['steel']}  · {view['summary']['part']}", head_pt, SHEET_MM - 2)
     reasons = view["reasons"][:1] if dense and not view["framed"] else view["reasons"]
     said = [(f"{view['verdict_word']}.", True), (" ".join(reasons), False)]
     if view["framed"]:
-        total += 5.6 + foot * count_lines([("xx", True), *said], foot_pt, SHEET_MM - 7)
+        total += (4.8 if number == 9 else 5.6) + foot * count_lines([("xx", True), *said], foot_pt, SHEET_MM - 7)
         others = [[(f"– {row['what']}", True), (f"Gives {row['gives']}." if row["gives"] else "", False)] for row in view["alternatives"]]
         if dense:
             total += foot * count_lines([run for runs in others for run in runs], foot_pt, SHEET_MM - 12) if others else 0
@@ -101,7 +101,7 @@ def height_of(view, size, line_mm):
     total += min(steps_height(view["runs"], size, do_mm) for do_mm in SPLITS_MM)
     upper, total = total, 0
     titles = 4.9 if number < 6 else 0
-    left = titles + 25 + 5.2 + 3 * foot
+    left = titles + 22 + 5.2 + 3 * foot
     right = titles
     for row in view["cautions"]:
         said = [row["text"], row["because"] if says_why(row, number) else "", view["more_cautions"] if row is view["cautions"][-1] else ""]

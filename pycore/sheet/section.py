@@ -6,7 +6,7 @@ from markupsafe import Markup
 from . import svg
 from .words import is_number, number
 
-WIDTH_MM, HEIGHT_MM = 50, 25
+WIDTH_MM, HEIGHT_MM = 50, 22
 LEFT, RIGHT, TOP, FOOT = 6, 17, 1.6, 4.6
 TEXT_PT = 9
 
@@ -52,7 +52,7 @@ def draw_section(plan):
         return [(LEFT + plot_w * across, height(hrc)) for across, hrc in whole]
 
     parts = []
-    step = 10 if high - low > 25 else 5
+    step = 10 if high - low > 20 else 5
     for tick in range(int(math.ceil(low / step) * step), int(high) + 1, step):
         y = height(tick)
         parts.append(svg.line(LEFT, y, LEFT + plot_w, y, "grid"))

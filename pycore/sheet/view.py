@@ -4,34 +4,19 @@ The template only sets these pieces in their places. The sheet reads the plan an
 """
 import re
 
-from markupsafe import Markup, escape
+from markupsafe import escape
 
 from . import svg
 from .fit import fit, title_size
-from .heatline import stations_of
+from .heatlayout import stations_of
+from .notes import PLACES, composition_of, notes_of, others_of, phases_of
+from .reader import Reader, part_of, rows_of, texts_of
 from .section import draw_section, nothing_to_draw
-from .words import (
-    NOT_COMPUTED,
-    WHOLE,
-    HRC_middle,
-    HRC_range,
-    both_units,
-    bound,
-    clean,
-    fahrenheit,
-    is_number,
-    number,
-    seconds,
-    span,
-)
+from .words import NOT_COMPUTED, HRC_range, bound, clean, fahrenheit, is_number, number, seconds, span
 
 PRINTED_CAUTIONS = 6
 VERDICTS = {"reachable": "Within reach", "borderline": "Borderline", "out-of-reach": "Out of reach"}
 SIGNALS = ("danger", "warning", "caution")
-PLACES = (("surface", "surface"), ("midradius", "mid-radius"), ("centre", "centre"))
-UNITS = (("_C_per_s", "°C/s"), ("_C_pct", "% C"), ("_C", "°C"), ("_min", "min"), ("_s", "s"), ("_mm", "mm"), ("_L", "L"),
-         ("_pct", "%"), ("HRC", "HRC"))
-DIFFERENCE = re.compile(r"rise|error|accuracy|margin|below|above|step")
 # The note that stands behind the "at" and the "how long" of a step.
 STEP_AT = {"austenitize": "austenitize.temperature_C", "transfer": "quench.bath_C", "out": "quench.out_of_bath_C",
            "check": "as_quenched.surface.HRC", "temper": "temper.temperature_C", "final-check": "final.surface.HRC",
@@ -39,92 +24,6 @@ STEP_AT = {"austenitize": "austenitize.temperature_C", "transfer": "quench.bath_
 STEP_TIME = {"austenitize": "austenitize.heat_up_min", "soak": "austenitize.soak_min",
              "transfer": "quench.transfer_s", "out": "quench.time_in_bath_s", "temper": "temper.hold_min",
              "cold": "cold.hold_min"}
-
-
-def anchor(key):
-    """A note's address: only letters, digits, dot, hyphen and underscore."""
-    return "why-" + re.sub(r"[^A-Za-z0-9_.-]", "-", key)
-
-
-def rows_of(value):
-    """A list of the plan's dictionaries; anything else in it is left out."""
-    return [row for row in value if isinstance(row, dict)] if isinstance(value, list) else []
-
-
-def texts_of(value):
-    return [text for text in map(clean, value) if text] if isinstance(value, list) else []
-
-
-def part_of(plan, name):
-    value = plan.get(name)
-    return value if isinstance(value, dict) else {}
-
-
-class Reader:
-    """Looks values up by their path and knows which have a note and which a mark."""
-
-    def __init__(self, plan):
-        self.plan = plan
-        self.why = part_of(plan, "why")
-        self.marks = [(clean(mark.get("value")), clean(mark.get("text"))) for mark in rows_of(plan.get("marks"))]
-        self.marked = False
-
-    def value(self, path):
-        here = self.plan
-        for name in path.split("."):
-            here = here.get(name) if isinstance(here, dict) else None
-        return here
-
-    def reason(self, path):
-        """What the mark on this value says, or ''."""
-        for value, text in self.marks:
-            if value and (path == value or path.startswith(value + ".")):
-                return text
-        return ""
-
-    def outside(self, path):
-        note = self.why.get(path)
-        return bool(self.reason(path)) or (isinstance(note, dict) and note.get("inside") is False)
-
-    def link_to(self, path):
-        """(address of the note or None, whether the value is marked) for a path of the plan."""
-        if not isinstance(path, str) or not path:
-            return None, False
-        outside = self.outside(path)
-        self.marked = self.marked or outside
-        return ("#" + anchor(path) if isinstance(self.why.get(path), dict) else None), outside
-
-    def shown(self, path, text, together=False):
-        """`text` for the value at `path`: linked to its note, marked "~" when outside its range.
-        With `together` its short parts, set apart by " · ", are not broken over two lines."""
-        if not text:
-            return Markup("")
-        address, outside = self.link_to(path)
-        text = ("~" if outside and not text.startswith("~") else "") + text
-        if together:
-            *before, last = text.split(" · ")
-            parts = [part + " ·" for part in before] + [last]      # the dot stays with what it follows
-            words = Markup(" ").join(Markup('<span class="whole">{}</span>').format(part) if len(part) <= WHOLE else escape(part)
-                                     for part in parts)
-        else:
-            words = escape(text)
-        return Markup('<a class="why" href="{}">{}</a>').format(address, words) if address else words
-
-    def number(self, path, unit=""):
-        value = self.value(path)
-        if not is_number(value):
-            return self.shown(path, NOT_COMPUTED)
-        return self.shown(path, f"{number(value)} {unit}".strip())
-
-    def temperature(self, path):
-        value = self.value(path)
-        return self.shown(path, both_units(value)) if is_number(value) else self.number(path)
-
-    def length(self, path):
-        value = self.value(path)
-        if is_number(value) and self.plan.get("units") == "in":
-            return self.shown(path, f"{number(value / 25.4, 2)} in")
-        return self.number(path, "mm")
 
 
 def view_of(plan):
@@ -245,6 +144,7 @@ def said(value, do):
 def facts_of(plan, reader):
     """Bath, time in it and skin: short facts for the foot. A spare one also stands elsewhere on the sheet."""
     quench, austenitize = part_of(plan, "quench"), part_of(plan, "austenitize")
+    steps = [step.get("id") for step in rows_of(plan.get("steps"))]
     facts = []
 
     def fact(name, text, spare=False):
@@ -268,14 +168,14 @@ def facts_of(plan, reader):
             fact("at", reader.shown("quench.bath_C", f"{span(*window)} °C · {in_F} °F"), spare=True)
         if is_number(quench.get("flash_C")):
             fact("flash point", reader.temperature("quench.flash_C"))
-        told = any(step.get("id") == "out" for step in rows_of(plan.get("steps")))
+        told = "out" in steps
         fact("out at", reader.temperature("quench.out_of_bath_C"), spare=told)
         fact("after", reader.shown("quench.time_in_bath_s", seconds(quench.get("time_in_bath_s"))), spare=told)
     if austenitize:
         fact("Scale", reader.length("austenitize.scale_mm"), spare=True)
         fact("carbon lost", reader.length("austenitize.decarb_mm") + escape(" deep"))
         if is_number(austenitize.get("stock_mm")):
-            fact("leave to grind", reader.length("austenitize.stock_mm"))
+            fact("leave to grind", reader.length("austenitize.stock_mm"), spare="stock" in steps)
     return facts
 
 
@@ -289,57 +189,3 @@ def missing_of(reader):
         if reader.value(path) is None and reason and reason not in found and path.split(".")[0] in ON_PAPER:
             found.append(reason)
     return found
-
-
-def value_text(reader, path):
-    """The value behind a note, in words."""
-    value = reader.value(path)
-    if path.endswith(".HRC") and isinstance(value, dict):
-        return f"{HRC_range({'HRC': value})} HRC, most likely {HRC_middle({'HRC': value})}"
-    unit = next((unit for ending, unit in UNITS if path.endswith(ending)), "")
-    if is_number(value):
-        if unit == "s":
-            return seconds(value)
-        # a rise or an error is a difference: it has no point on the other scale
-        return both_units(value) if unit == "°C" and not DIFFERENCE.search(path) else f"{number(value)} {unit}".strip()
-    if isinstance(value, list) and len(value) == 2 and all(map(is_number, value)):
-        return f"{span(*value)} {unit}".strip()
-    return clean(value) if isinstance(value, str) else (NOT_COMPUTED if value is None else "")
-
-
-def notes_of(reader):
-    """One note for each number that has a "why"."""
-    notes = []
-    for path, row in reader.why.items():
-        if isinstance(path, str) and isinstance(row, dict):
-            notes.append({"anchor": anchor(path), "name": clean(row.get("name")) or path, "value": value_text(reader, path),
-                          "model": clean(row.get("model")), "inputs": clean(row.get("inputs")),
-                          "source": clean(row.get("source")), "range": clean(row.get("range")),
-                          "outside": reader.outside(path), "reason": reader.reason(path)})
-    return notes
-
-
-def others_of(plan):
-    """The other baths that were looked at."""
-    return [{"name": clean(row.get("medium_name")) or clean(row.get("medium")),
-             "surface": number(row.get("surface_HRC"), 2), "centre": number(row.get("centre_HRC"), 2),
-             "why_not": clean(row.get("why_not"))} for row in rows_of(part_of(plan, "quench").get("others"))]
-
-
-def phases_of(plan):
-    """What the steel is made of as quenched, in per cent, place by place."""
-    found = []
-    for key, name in PLACES:
-        phases = part_of(part_of(plan, "as_quenched"), key).get("phases")
-        if isinstance(phases, dict) and any(map(is_number, phases.values())):
-            shares = [f"{clean(phase).replace('_', ' ')} {number(share * 100, 2)} %"
-                      for phase, share in phases.items() if is_number(share) and share >= 0.005]
-            found.append({"place": name, "shares": ", ".join(shares)})
-    return found
-
-
-def composition_of(plan):
-    composition = part_of(plan, "steel").get("composition")
-    if not isinstance(composition, dict):
-        return ""
-    return ", ".join(f"{clean(element)} {number(share)} %" for element, share in composition.items() if is_number(share))

@@ -83,6 +83,33 @@ def test_markup_in_a_title_is_only_text():
     assert ask(do="open", text=saved["html"])["job"]["title"] == MARKUP
 
 
+@pytest.mark.parametrize("do", ["plan", "save"])
+def test_half_a_surrogate_pair_does_not_leave_the_core(do):
+    """Legal JSON, but no text: a browser or a file cannot take it. A fault or a cleaned title."""
+    api.run(json.dumps({"do": do, "job": sample(title="\ud800 chisel")})).encode("utf-8")
+
+
+HALF = "\ud800"
+
+
+@pytest.mark.parametrize(
+    "changes",
+    [{"steel__grade": HALF}, {"part__features": [HALF]}, {"decided": {HALF: 1}}, {"steel": {"chemistry": {"C": 0.5, HALF: 1}}},
+     {"part__dimensions_mm__diameter": HALF}, {"shop__baths": [{"medium": [HALF]}]}, {"schema": HALF}, {"units": HALF}],
+    ids=lambda c: next(iter(c)),
+)
+def test_nor_does_it_leave_in_a_fault(changes):
+    text = api.run(json.dumps({"do": "plan", "job": sample(**changes)}))
+    text.encode("utf-8")
+    assert strict(text)["errors"]
+
+
+def test_a_number_too_long_to_read():
+    """5000 digits: Python refuses to read them; that is the sender's fault, not a bug of ours."""
+    answer = strict(api.run('{"do":"plan","job":{"quantity":' + "9" * 5000 + "}}"))
+    assert not answer["ok"] and answer.get("errors"), answer.get("bug")
+
+
 @pytest.mark.parametrize("field", ["steel__grade", "part__shape", "aim__use", "shop__heat__kind", "units", "schema"])
 def test_markup_in_any_field_is_a_fault(field):
     answer = ask(do="plan", job=sample(**{field: MARKUP}))

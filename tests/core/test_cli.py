@@ -131,3 +131,10 @@ def test_not_utf8(tmp_path):
 
 def test_version():
     assert pycore.__version__ in call("--version").stdout
+
+
+def test_a_character_that_cannot_be_written_spoils_one_line_only():
+    """Half a surrogate pair is legal JSON and no text: a fault or a cleaned title, never a traceback over all the jobs."""
+    given = "\n".join(json.dumps(job) for job in (sample(), sample(title="\ud800 chisel"), sample(steel__grade="\ud800"), sample("punch")))
+    done = call("-", "--format", "json", given=given)
+    assert "Traceback" not in done.stderr and len(done.stdout.splitlines()) == 4

@@ -146,6 +146,19 @@ def test_eutectoid_without_residuals_is_too_fast():
     assert critical_rate(0.95, EUTECTOID, 6) <= 35 * 2.1
 
 
+def test_4340_critical_cooling_rate():
+    """Callister, Fundamentals, CCT of 4340: all martensite from 8.3 °C/s, bainite begins below; within a factor of 2. At
+    0.3 °C/s bainite is the greater part, at 0.006 °C/s it is all ferrite and pearlite."""
+    def cool_4340(rate):
+        found = cooled(rate, STEEL_4340, Ae1=725.0, Ae3=775.0)
+        return {name: float(found[name][0]) for name in ("ferrite", "pearlite", "bainite")}
+
+    assert sum(cool_4340(8.3 * 2).values()) < 0.01 < sum(cool_4340(8.3 / 2).values())
+    assert cool_4340(0.3)["bainite"] > 0.5
+    slow = cool_4340(0.006)
+    assert slow["bainite"] < 0.02 and slow["ferrite"] + slow["pearlite"] > 0.98
+
+
 def test_slower_is_softer():
     rates = (2.0, 10.0, 40.0, 160.0, 640.0)
     soft = [sum(float(cooled(r)[name][0]) for name in ("ferrite", "pearlite", "bainite")) for r in rates]

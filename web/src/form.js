@@ -188,7 +188,7 @@ export function makeForm(root, catalogue, typedAtStart, { onChange, onRemoved })
     const usual = medium?.default_C ?? null;
     return keep(group({ path: at, legend: `Bath ${index + 1}` },
       make("div", { class: "row" },
-        select(`${at}.medium`, bath, "medium", { label: "What is in it", options: catalogue.media, blank: "Choose", width: "half" }, () => redraw(`${at}.medium`)),
+        select(`${at}.medium`, bath, "medium", { label: "What is in it", options: catalogue.media, blank: "Choose", width: "wide" }, () => redraw(`${at}.medium`)),
         liquid ? text(`${at}.volume_L`, bath, "volume", { label: "Litres", hint: "or 3 gal", reading: inLitres, width: "half" }) : null,
         text(`${at}.temperature_C`, bath, "temperature", { label: "Temperature (°C)", hint: usual === null ? "or 120 F" : `blank: ${usual} °C`, reading: inCelsius, width: "half" }),
         select(`${at}.agitation`, bath, "agitation", { label: "Movement", hint: "of part or bath", options: catalogue.agitations, blank: "Not said", width: "half" })),
@@ -234,7 +234,7 @@ export function makeForm(root, catalogue, typedAtStart, { onChange, onRemoved })
         select("shop.temper.kind", typed.temper, "kind", { label: "You temper in", options: catalogue.tempers, blank: "Choose", width: "wide" }),
         text("shop.temper.max_C", typed.temper, "max", { label: "Hottest it gets (°C)", hint: "or 500 F", reading: inCelsius, width: "half" }),
         text("shop.temper.accuracy_C", typed.temper, "accuracy", { label: "Off by up to (°C)", hint: "either way", reading: inCelsiusApart, width: "half" })))),
-      select("shop.cold", typed, "cold", { label: "Cold below zero", options: catalogue.colds, blank: "Not said" }),
+      select("shop.cold", typed, "cold", { label: "Cold below zero", options: catalogue.colds }),
       nextButton("shop"));
   }
 

@@ -18,7 +18,7 @@ export function emptyTyped() {
     heat: { kind: "", max: "", accuracy: "", atmosphere: "", pyrometer: false },
     baths: [emptyBath()],
     temper: { kind: "", max: "", accuracy: "" },
-    cold: "",
+    cold: "none",
     decided: { austenitize: "", medium: "", temper: "", hold: "", cycles: "" },
   };
 }
@@ -155,7 +155,7 @@ export function typedFromJob(job) {
       temperature: showNumber(bath.temperature_C), agitation: bath.agitation ?? "",
     })),
     temper: { kind: temper.kind ?? "", max: showNumber(temper.max_C), accuracy: showNumber(temper.accuracy_C) },
-    cold: shop.cold ?? "",
+    cold: shop.cold ?? "none",
     decided: {
       austenitize: showNumber(decided?.austenitize_C), medium: decided?.medium ?? "", temper: showNumber(decided?.temper_C),
       hold: showNumber(decided?.temper_hold_min), cycles: showNumber(decided?.temper_cycles),

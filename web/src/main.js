@@ -17,6 +17,8 @@ import { keepDraft, readDraft, storageWorks } from "./store.js";
 const PLAN_LIMIT_s = 20;
 // While a field is still being typed in, a fault in it waits this long before it is shown.
 const FAULT_PATIENCE_ms = 900;
+// An answer that comes sooner needs no word about waiting.
+const NOTICEABLE_ms = 350;
 
 const VERDICT_WORDS = { reachable: "within reach", borderline: "borderline", "out-of-reach": "out of reach" };
 
@@ -30,6 +32,7 @@ const paperIsExample = JSON.stringify(jobFromTyped(typedFromJob(catalogue.demo_j
 let runtime = null;
 let storageTold = false;
 let faultTimer = null;
+let slowTimer = null;
 
 // --- the job in the form --------------------------------------------------------------------------
 
@@ -95,7 +98,8 @@ const planner = makePlanner({
     status.setSheet(status.state() === "waking" && isExample() ? "example" : "stale");
     if (status.state() === "ready" || status.state() === "working") {
       status.setState("working");
-      status.say("Working on it. The sheet below is from before the change.", { aloud: false });
+      clearTimeout(slowTimer);
+      slowTimer = setTimeout(() => status.say("Working on it. The sheet below is from before the change.", { aloud: false }), NOTICEABLE_ms);
     }
   },
   onAnswer: showAnswer,
@@ -103,6 +107,7 @@ const planner = makePlanner({
 
 function showAnswer(answer) {
   clearTimeout(faultTimer);
+  clearTimeout(slowTimer);
   if (status.state() === "failed") return; // the worker died under this question; showFailure has said so
   status.setState("ready");
   status.clearTrouble();
@@ -134,6 +139,7 @@ function showJobFaults(errors) {
   };
   const typingIn = [...form.fields()].find((field) => field.control === document.activeElement && field.control.type === "text" && !field.blank());
   if (!typingIn) { show(); return; }
+  status.say("The sheet below is from before the change.", { aloud: false });
   faultTimer = setTimeout(show, FAULT_PATIENCE_ms);
 }
 
@@ -156,6 +162,7 @@ function showBug({ id, what, where, versions }) {
 
 function showPhase(name, text) {
   if (name === "ready") return; // showReady follows
+  clearTimeout(slowTimer);
   status.setState("waking");
   const what = text || name;
   const below = status.sheet() === "example" ? "The sheet below is an example." : "The sheet below is not yet yours.";
@@ -174,6 +181,7 @@ function showReady(versions) {
 }
 
 function showFailure({ phase, what, why, hint, technical } = {}) {
+  clearTimeout(slowTimer);
   planner.sleep();
   status.setState("failed");
   status.say(status.sheet() === "example" ? "The planner is not running. The sheet below is only an example." : "The planner is not running. The sheet below does not match the job.", { aloud: false });

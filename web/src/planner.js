@@ -1,7 +1,12 @@
 // Asks the core for a plan after the form has changed: a short wait after the last key, one question at a time,
-// and an answer that a newer change has overtaken is dropped.
+// and an answer that a newer change has overtaken is dropped. How long to wait follows how long the last answer
+// took: a fast machine shows the sheet almost with the key, a slow phone is not asked for every letter.
 
-export function makePlanner({ ask, onStale, onAnswer, wait_ms = 200 }) {
+const SHORTEST_WAIT_ms = 20;
+const LONGEST_WAIT_ms = 250;
+
+export function makePlanner({ ask, onStale, onAnswer }) {
+  let wait_ms = LONGEST_WAIT_ms;
   let awake = false;
   let owing = true;
   let newest = 0;
@@ -23,8 +28,10 @@ export function makePlanner({ ask, onStale, onAnswer, wait_ms = 200 }) {
     if (busy || !awake || settled()) return;
     busy = true;
     const asked = newest;
+    const began_ms = performance.now();
     const answer = await ask();
     busy = false;
+    wait_ms = Math.min(LONGEST_WAIT_ms, Math.max(SHORTEST_WAIT_ms, (performance.now() - began_ms) / 3));
     if (asked === newest && !answer.superseded) {
       answered = asked;
       onAnswer(answer);
