@@ -44,6 +44,7 @@ LIMIT_MB = 12
 # Only the texts of help(); leaving them out spares the page a twentieth of numpy's start.
 NUMPY_DOCS = ("numpy/_core/_add_newdocs.py", "numpy/_core/_add_newdocs_scalars.py")
 FROZEN = {"numpy", "jinja2", "markupsafe", "quenchwright"}
+TREES = ("numpy", "jinja2", "markupsafe", "core")  # laid into Python's memory, in this order
 
 
 class Build:
@@ -128,16 +129,14 @@ class Build:
         self.exercised = self.work / "exercise.json"
         once(self.exercised, key_of(*self.compiled.values(), *HELPERS.glob("exercise.*"), fetch.WEB / "src" / "tree.js"),
              self.exercise_whole)
-        said = json.loads(self.exercised.read_text())
+        said = json.loads(self.exercised.read_text("utf-8"))
         if not said["answers"]["demo"]["ok"]:
             raise Stop(f"Inside Pyodide the demo job is not planned: {json.dumps(said['answers']['demo'])[:600]}")
         modules = said["modules"]
         self.library = {
             "stdlib": parts.trimmed_stdlib(self.compiled["stdlib"], modules),
+            **{name: parts.tree(self.compiled[name]) for name in TREES},
             "numpy": parts.tree(self.compiled["numpy"], parts.numpy_keeper(modules)),
-            "jinja2": parts.tree(self.compiled["jinja2"]),
-            "markupsafe": parts.tree(self.compiled["markupsafe"]),
-            "core": parts.tree(self.compiled["core"]),
         }
         kept = len(parts.names_in(self.library["stdlib"]))
         self.steps.note(f"{len(modules)} modules imported; {kept} files of the standard library kept")
@@ -163,7 +162,7 @@ class Build:
     def exercise_whole(self, out: Path) -> None:
         """A full run on everything untrimmed, to see what is imported."""
         trees = []
-        for name in ("numpy", "jinja2", "markupsafe", "core"):
+        for name in TREES:
             trees.append(self.work / f"whole-{name}.tree")
             trees[-1].write_bytes(parts.tree(self.compiled[name]))
         self.in_node("exercise.mjs", fetch.RUNTIME, self.compiled["stdlib"], out, *trees,
@@ -173,18 +172,17 @@ class Build:
         self.steps.step("The page in one file")
         data_file = self.work / "page.json"
         once(data_file, key_of(parts.sources(CORE), HELPERS / "page_data.py"),
-             lambda out: out.write_text(run([fetch.PYTHON, HELPERS / "page_data.py"], "The core does not run.")))
-        data = json.loads(data_file.read_text())
+             lambda out: out.write_text(run([fetch.PYTHON, HELPERS / "page_data.py"], "The core does not run."), "utf-8"))
+        data = json.loads(data_file.read_text("utf-8"))
         script = self.bundle(fetch.WEB / "src" / "main.js", "page.js")
         embedded = self.embedded()
         blocks = {part.name: part.block for part in embedded}
-        trees = ["numpy", "jinja2", "markupsafe", "core"]
         versions = {**data["versions"], "numpy": self.lock["packages"]["numpy"]["version"],
                     "pyodide": self.lock["info"]["version"], "python": self.lock["info"]["python"]}
         blocks["licences"] = pack.data_block("licences", licences.texts(self), "text/plain")
-        index = pack.data_block("embedded-index", pack.index(embedded, trees, self.lock, versions))
-        style = (fetch.WEB / "style.css").read_text() + data["sheet_css"]
-        page = pack.fill((fetch.WEB / "index.html").read_text(), {
+        index = pack.data_block("embedded-index", pack.index(embedded, TREES, self.lock, versions))
+        style = (fetch.WEB / "style.css").read_text("utf-8") + data["sheet_css"]
+        page = pack.fill((fetch.WEB / "index.html").read_text("utf-8"), {
             "csp": pack.policy(script),
             "style": f"<style>{style}</style>",
             "demo-sheet": data["demo_sheet"],
@@ -193,7 +191,7 @@ class Build:
             "assets": "\n".join(blocks.values()),
         })
         DIST.mkdir(exist_ok=True)
-        PAGE.write_text(page)
+        PAGE.write_text(page, "utf-8")
         print(pack.sizes(page, blocks))
         if PAGE.stat().st_size > LIMIT_MB * 1_000_000:
             raise Stop(f"{PAGE.name} is larger than {LIMIT_MB} MB.")
@@ -204,11 +202,11 @@ class Build:
         scripts = [entry, *(fetch.WEB / "src").rglob("*.js"), fetch.WEB / "package-lock.json", HELPERS / "bundle.mjs"]
         once(target, key_of(scripts), lambda out: self.in_node(
             "bundle.mjs", entry, out, failed=f"esbuild could not bundle {entry.relative_to(ROOT)}."))
-        return target.read_text().strip()
+        return target.read_text("utf-8").strip()
 
     def worker_source(self, entry: Path, name: str) -> str:
         """Pyodide's two scripts and a worker behind them: one script for one Blob."""
-        scripts = [drop_source_map((fetch.RUNTIME / file).read_text()) for file in ("pyodide.asm.js", "pyodide.js")]
+        scripts = [drop_source_map((fetch.RUNTIME / file).read_text("utf-8")) for file in ("pyodide.asm.js", "pyodide.js")]
         return "\n".join([*scripts, self.bundle(entry, name)])
 
     def embedded(self) -> list[pack.Part]:
@@ -238,7 +236,7 @@ def drop_source_map(text: str) -> str:
 
 def core_version() -> str:
     """The version in pycore/__init__.py, which pyproject.toml must agree with."""
-    lines = (CORE / "__init__.py").read_text().splitlines()
+    lines = (CORE / "__init__.py").read_text("utf-8").splitlines()
     version = next(line for line in lines if line.startswith("__version__")).split('"')[1]
     if version != declared()["version"]:
         raise Stop(f"pycore/__init__.py says version {version}, pyproject.toml says {declared()['version']}.")
@@ -247,7 +245,7 @@ def core_version() -> str:
 
 def declared() -> dict:
     """The project's own table in pyproject.toml."""
-    return tomllib.loads((ROOT / "pyproject.toml").read_text())["project"]
+    return tomllib.loads((ROOT / "pyproject.toml").read_text("utf-8"))["project"]
 
 
 def closure(frozen: dict, root: str) -> dict:
@@ -268,7 +266,8 @@ def main() -> int:
     options, rest = parser.parse_known_args()
     if rest and options.command != "test":
         parser.error(f"unknown arguments: {' '.join(rest)}")
-    os.environ["PYTHONHASHSEED"] = "0"  # whatever the helpers make must not depend on it
+    # What the helpers make must depend neither on Python's hash seed nor on the machine's language.
+    os.environ.update(PYTHONHASHSEED="0", PYTHONUTF8="1")
     try:
         build = Build(options.wheels, "build" if options.command == "build" else "test")
         build.everything()

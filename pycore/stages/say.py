@@ -49,6 +49,13 @@ def hold(hold_min, cycles):
     return (f"{cycles} × {value}" if cycles > 1 else value), unit
 
 
+def rough_length(value_mm, units):
+    """A length to set by eye: to 5 mm, or to 1/4 in."""
+    if units == "in":
+        return show_length(max(6.35, nearest(value_mm / 6.35, 1) * 6.35), "in")
+    return show_length(max(5, nearest(value_mm, 5)), "mm")
+
+
 def part_phrase(job, section):
     """“20 mm round, 180 mm long, tip hardened for 40 mm, forged”."""
     d, units, shape = job.part.dimensions_mm, job.units, job.part.shape
@@ -69,7 +76,7 @@ def part_phrase(job, section):
     if "length" in d:
         said += f", {show('length')} long"
     if job.part.zone != "all":
-        said += f", {job.part.zone} hardened for {show_length(round(section.zone_mm, 1), units)}"
+        said += f", {job.part.zone} hardened for {rough_length(section.zone_mm, units) if job.part.zone_mm is None else show_length(section.zone_mm, units)}"
     if job.part.condition != "unknown":
         said += ", " + words.CONDITIONS[job.part.condition]
     return said

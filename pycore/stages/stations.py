@@ -3,13 +3,25 @@
 from pycore import words
 from pycore.stages import say
 
+SHORT = {
+    "water": "water",
+    "brine": "brine",
+    "fast-oil": "oil",
+    "medium-oil": "oil",
+    "canola": "canola",
+    "still-air": "still air",
+    "fan-air": "fan air",
+    "plates": "plates",
+}
+CRITICAL = ("austenitize", "soak", "transfer", "quench", "temper", "hold")  # what must be read from across the shop
+
 
 def stations(job, heat, quenched, cold, temper, listed):
     """What stands on the heat line, left to right, each with the number of its step."""
     number = {step["id"]: step["n"] for step in listed}
     on_line = []
 
-    def add(id_, label, value, unit, other, note, temperature_C, step, why=None):
+    def add(id_, label, value, unit, other, note, temperature_C, order, why=None):
         on_line.append(
             {
                 "id": id_,
@@ -19,12 +31,13 @@ def stations(job, heat, quenched, cold, temper, listed):
                 "other": other,
                 "note": note,
                 "temperature_C": temperature_C,
-                "order": number.get(step, 0),
+                "order": order,
                 "why": why,
             }
         )
 
-    for stage in heat.preheat:
+    preheats = [step["n"] for step in listed if step["id"] == "preheat"]
+    for n, stage in zip(preheats, heat.preheat):
         T = stage["temperature_C"]
         add(
             "preheat",
@@ -34,7 +47,7 @@ def stations(job, heat, quenched, cold, temper, listed):
             f"{say.fahrenheit(T)} °F",
             f"{stage['hold_min']:.0f} min",
             T,
-            "preheat",
+            n,
         )
     T = heat.temperature_C
     add(
@@ -45,7 +58,7 @@ def stations(job, heat, quenched, cold, temper, listed):
         f"{say.fahrenheit(T)} °F",
         heat.colour,
         T,
-        "austenitize",
+        number["austenitize"],
         "austenitize.temperature_C",
     )
     value, unit = say.minutes(heat.soak_min).split(" ")
@@ -57,20 +70,11 @@ def stations(job, heat, quenched, cold, temper, listed):
         "",
         f"{say.minutes(heat.soak_max_min)} at most",
         T,
-        "soak",
+        number["soak"],
         "austenitize.soak_min",
     )
     walk_value, walk_unit = say.seconds(quenched.transfer_s).split(" ")
-    short = {
-        "brine": "brine",
-        "water": "water",
-        "canola": "canola",
-        "fast-oil": "oil",
-        "medium-oil": "oil",
-        "still-air": "air",
-        "fan-air": "fan",
-        "plates": "plates",
-    }[quenched.medium]
+    short = SHORT[quenched.medium]
     add(
         "transfer",
         f"fire to {short}",
@@ -79,7 +83,7 @@ def stations(job, heat, quenched, cold, temper, listed):
         "",
         "straight down" if quenched.kind in ("water", "oil") else "",
         None,
-        "transfer",
+        number["transfer"],
         "quench.transfer_s",
     )
     low, high = quenched.bath_window_C
@@ -93,19 +97,19 @@ def stations(job, heat, quenched, cold, temper, listed):
             say.span_F(low, high),
             out,
             quenched.bath_C,
-            "transfer",
+            number["transfer"],
             "quench.time_in_bath_s",
         )
     else:
         add(
             "quench",
-            quenched.medium_name,
+            short,
             f"{quenched.out_of_bath_C:.0f}",
             "°C",
             f"{say.fahrenheit(quenched.out_of_bath_C)} °F",
             f"after {say.seconds(quenched.time_in_bath_s)}",
             quenched.out_of_bath_C,
-            "out",
+            number["out"],
             "quench.time_in_bath_s",
         )
     if cold is not None:
@@ -117,7 +121,7 @@ def stations(job, heat, quenched, cold, temper, listed):
             f"{say.fahrenheit(cold.temperature_C)} °F".replace("-", "−"),
             say.minutes(cold.hold_min),
             cold.temperature_C,
-            "cold",
+            number["cold"],
             "cold.temperature_C",
         )
     T = temper.temperature_C
@@ -129,7 +133,7 @@ def stations(job, heat, quenched, cold, temper, listed):
         f"{say.fahrenheit(T)} °F",
         temper.colour or "",
         T,
-        "temper",
+        number["temper"],
         "temper.temperature_C",
     )
     value, unit = say.hold(temper.hold_min, temper.cycles)
@@ -141,10 +145,7 @@ def stations(job, heat, quenched, cold, temper, listed):
         "",
         "cool between" if temper.cycles > 1 else "once through",
         T,
-        "temper",
+        number["temper"],
         "temper.hold_min",
     )
     return tuple(on_line)
-
-
-CRITICAL = ("austenitize", "soak", "transfer", "quench", "temper", "hold")

@@ -17,14 +17,14 @@ def steps(job, steel, section, heat, quenched, cold, temper, aim_HRC, use, cauti
     """The numbered steps, only those this part needs."""
     listed = [_ready(job, section, quenched, temper)]
     listed += _prepare(job, steel, heat)
-    for stage in heat.preheat:
+    for i, stage in enumerate(heat.preheat):
         listed.append(
             _step(
                 "preheat",
-                f"Preheat to {stage['temperature_C']} °C",
-                say.temperature(stage["temperature_C"]),
+                f"{'Then' if i else 'Preheat'} to {stage['temperature_C']} °C",
+                f"{say.fahrenheit(stage['temperature_C'])} °F",
                 f"{stage['hold_min']:.0f} min",
-                "The whole part one even shade. Only then go on.",
+                "The whole part one even shade.",
                 "was",
             )
         )
@@ -86,7 +86,7 @@ def _ready(job, section, quenched, temper):
         )
         said.append(
             f"{name} {litres} at {say.span(*quenched.bath_window_C)} °C, "
-            f"deeper than {show_length(nearest(dip + 50, 10), job.units)}."
+            f"deeper than {say.rough_length(dip + 50, job.units)}."
         )
     elif quenched.kind == "plates":
         said.append("Two thick aluminium plates and clamps at hand.")
@@ -113,7 +113,7 @@ def _prepare(job, steel, heat):
             )
         )
     if heat.stock_mm >= 0.15:
-        stock = show_length(heat.stock_mm, "mm") if job.units == "mm" else f"{heat.stock_mm / 25.4:.3f} in"
+        stock = show_length(heat.stock_mm) if job.units == "mm" else f"{heat.stock_mm / 25.4:.3f} in"
         listed.append(
             _step(
                 "stock",
@@ -186,10 +186,10 @@ def _plunge(job, section, quenched):
     at = f"{say.span(low, high)} °C · {say.span_F(low, high)}"
     name = {"oil": "oil", "water": "brine" if quenched.medium == "brine" else "water"}[quenched.kind]
     if job.part.zone == "tip":
-        under = show_length(nearest(section.zone_mm, 5) if job.units == "mm" else section.zone_mm, job.units)
+        under = say.rough_length(section.zone_mm, job.units)
         look = f"Tip first, {under} under, up and down so that no hard line forms. Not side to side."
     elif job.part.zone == "edge":
-        under = show_length(round(section.zone_mm), job.units)
+        under = say.rough_length(section.zone_mm, job.units)
         look = f"Edge first, straight down, {under} under; rock along its length, never flat side to side."
     elif job.part.shape in ("flat", "wedge"):
         look = "On edge and straight down, all under. Move it along its own plane, never flat side to side."
@@ -268,7 +268,7 @@ def _temper(job, quenched, temper):
     cool, hot = temper.window_C
     window = f" ({say.span(cool, hot)})" if cool is not None and hot > cool else ""
     at = f"{temper.temperature_C:.0f} °C{window} · {say.fahrenheit(temper.temperature_C)} °F"
-    colour = f"{temper.colour.capitalize()} on bright steel" if temper.colour else "Too cool for a colour"
+    seen = temper.colour.capitalize() if temper.colour else "No colour yet"
     start = f"within {say.minutes(temper.start_within_min)}"
     if temper.kind == "residual-heat":
         return _step(
@@ -276,7 +276,7 @@ def _temper(job, quenched, temper):
             "Let the colours run",
             at,
             "seconds",
-            f"Polish the zone at once; heat left in the body runs forward. {colour.split(' on ')[0]} "
+            f"Polish the zone at once; heat left in the body runs forward. {seen} "
             "at the working end: quench all of it.",
             "colour",
         )
@@ -286,21 +286,21 @@ def _temper(job, quenched, temper):
             f"Draw to colour {start}",
             at,
             f"{temper.cycles} × {say.minutes(temper.hold_min)}",
-            f"Bright steel. Heat from the thick side, flame moving. {colour.split(' on ')[0]}, then off.",
+            f"Bright steel. Heat from the thick side, flame moving. {seen}, then off.",
             "colour",
         )
     value, unit = say.hold(temper.hold_min, temper.cycles)
-    through = f"; the part is through {say.minutes(max(1, temper.heat_up_min))} after it goes in"
+    heat_up = say.minutes(max(1, temper.heat_up_min))
     between = " Cool to hand-warm between." if temper.cycles > 1 else ""
     verb = "kiln" if temper.kind == "kiln" else "salt" if temper.kind == "salt" else "oven"
-    slow = "" if not temper.colour else f"{colour}, an hour darker than a flash."
+    colour = f"Bright steel turns {temper.colour} or darker." if temper.colour else ""
     blank = " / ".join(("1st", "2nd", "3rd", "4th", "5th", "6th")[: temper.cycles]) if temper.cycles > 1 else "in / out"
     return _step(
         "temper",
         f"Into the {verb} {start}",
         at,
-        f"{value} {unit} at heat{through}",
-        f"{slow}{between}".strip() or "In the middle, away from the elements.",
+        f"{heat_up} to heat, then {value} {unit}",
+        f"{colour}{between}".strip() or "In the middle, away from the elements.",
         blank,
     )
 

@@ -32,8 +32,9 @@ def chromium() -> str | None:
 
 @pytest.fixture(scope="session")
 def browser():
-    from playwright.sync_api import sync_playwright
+    from playwright.sync_api import expect, sync_playwright
 
+    expect.set_options(timeout=20_000)  # a busy machine is not a fault
     if not PAGE.exists():
         pytest.fail(f"{PAGE} is not there; run build.py first")
     with sync_playwright() as playwright:

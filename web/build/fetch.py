@@ -28,7 +28,7 @@ AGAIN = "Check the network and run the same command again: what is already here 
 
 def environment(steps: Steps, group: str) -> None:
     """Make ``.venv`` and install the pinned group (``build`` or ``test``) of pyproject.toml."""
-    pins = tomllib.loads((ROOT / "pyproject.toml").read_text())["project"]["optional-dependencies"]
+    pins = tomllib.loads((ROOT / "pyproject.toml").read_text("utf-8"))["project"]["optional-dependencies"]
     wanted = pins["build"] + (pins["test"] if group == "test" else [])
     stamp = VENV / "quenchwright.key"
     key = key_of(sys.version, *wanted)
@@ -72,7 +72,7 @@ def find_node() -> Node:
         said = subprocess.run([node, "--version"], text=True, capture_output=True, check=False).stdout
         if said.startswith("v") and int(said[1:].split(".")[0]) >= 18:
             return Node(node, (npm,), f"Node {said.strip()} of this machine")
-    pin = tomllib.loads((ROOT / "pyproject.toml").read_text())["project"]["optional-dependencies"]["node"]
+    pin = tomllib.loads((ROOT / "pyproject.toml").read_text("utf-8"))["project"]["optional-dependencies"]["node"]
     folder = CACHE / "node"
     once(folder, key_of(*pin), lambda fresh: run(
         [PYTHON, "-m", "pip", "install", "--quiet", "--disable-pip-version-check", "--no-deps", "--target", fresh, *pin],
@@ -104,7 +104,7 @@ class Wheels:
     def __init__(self, steps: Steps, node: str, given: Path | None = None):
         if given and not given.is_dir():
             raise Stop(f"--wheels {given}: there is no such folder.")
-        table = tomllib.loads((Path(__file__).parent / "wheels.toml").read_text())
+        table = tomllib.loads((Path(__file__).parent / "wheels.toml").read_text("utf-8"))
         self.listed = {entry["name"]: entry for entry in table["wheel"]}
         self.steps, self.node, self.given, self.folder = steps, node, given, CACHE / "wheels"
         self.folder.mkdir(parents=True, exist_ok=True)
@@ -124,7 +124,7 @@ class Wheels:
 
     def runtime(self) -> dict[str, Path]:
         """Pyodide's own numpy, micropip and packaging, checked against Pyodide's own lock file."""
-        packages = json.loads((RUNTIME / "pyodide-lock.json").read_text())["packages"]
+        packages = json.loads((RUNTIME / "pyodide-lock.json").read_text("utf-8"))["packages"]
         carrier = self.listed["carrier"]
         wanted = {name: packages[name] for name in carrier["carries"]}
         paths = {name: self.folder / entry["file_name"] for name, entry in wanted.items()}

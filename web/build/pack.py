@@ -32,7 +32,7 @@ def gzipped(data: bytes) -> bytes:
     return packer.compress(data) + packer.flush()
 
 
-def index(parts: list[Part], trees: list[str], lock: dict, versions: dict) -> str:
+def index(parts: list[Part], trees: tuple[str, ...], lock: dict, versions: dict) -> str:
     """What the page must know of the parts: sizes, hashes, the frozen lock, the versions that belong together."""
     table = {part.name: {"bytes": len(part.data), "sha256": sha256(part.data)} for part in parts}
     return json.dumps({"parts": table, "trees": trees, "lock": lock, "versions": versions}, sort_keys=True)

@@ -13,7 +13,7 @@ FOLDER = Path(__file__).resolve().parent / "plain"
 
 def make(build, target: Path) -> None:
     """Write the page that ``build.py bench`` measures ours against."""
-    lock = json.loads((fetch.RUNTIME / "pyodide-lock.json").read_text())
+    lock = json.loads((fetch.RUNTIME / "pyodide-lock.json").read_text("utf-8"))
     script = build.bundle(FOLDER / "main.js", "plain-main.js")
     parts = [
         pack.Part("worker", build.worker_source(FOLDER / "worker.js", "plain-worker.js").encode()),
@@ -21,9 +21,9 @@ def make(build, target: Path) -> None:
         pack.Part("stdlib", (fetch.RUNTIME / "python_stdlib.zip").read_bytes()),
         pack.Part("numpy", build.own["numpy"].read_bytes()),
     ]
-    index = pack.data_block("embedded-index", pack.index(parts, ["numpy"], lock, {}))
-    target.write_text(pack.fill((FOLDER / "index.html").read_text(), {
+    index = pack.data_block("embedded-index", pack.index(parts, ("numpy",), lock, {}))
+    target.write_text(pack.fill((FOLDER / "index.html").read_text("utf-8"), {
         "csp": pack.policy(script),
         "script": f"{index}\n<script>{script}</script>",
         "assets": "\n".join(part.block for part in parts),
-    }))
+    }), "utf-8")

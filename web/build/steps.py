@@ -80,7 +80,7 @@ def run(command: list[str | Path], failed: str, **options) -> str:
     """Run a command quietly and return what it printed; on failure stop with ``failed`` and what it said."""
     try:
         done = subprocess.run(
-            [str(part) for part in command], cwd=options.pop("cwd", ROOT), text=True,
+            [str(part) for part in command], cwd=options.pop("cwd", ROOT), encoding="utf-8",
             stdout=subprocess.PIPE, stderr=subprocess.STDOUT, check=False, **options,
         )
     except OSError as error:
