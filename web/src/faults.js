@@ -25,7 +25,7 @@ function sayAtField({ path, value, expected, message }) {
   if (!expected) return message;
   if (path === "steel.grade" && !missing(value)) return `${shown(value)} is not a steel known here. Choose one from the list, or fill in a certificate.`;
   const wanted = expected.replace(/[.]$/, "");
-  return missing(value) ? `Missing: give ${wanted}.` : `${shown(value)} does not fit: give ${wanted}.`;
+  return missing(value) ? `Give ${wanted}.` : `${shown(value)} does not fit: give ${wanted}.`;
 }
 
 /** A fault where there is no field to put it at. */
