@@ -128,7 +128,8 @@ def _index(name, *fields):
 
 def find_row(name, typed):
     """The row of grades, uses or media meant by a typed id or alias, or None."""
-    wanted = _index(name, "id", "aliases").get(tidy(typed))
+    fields = ("id", "aliases") if name == "grades" else ("id", "aliases", "name")
+    wanted = _index(name, *fields).get(tidy(typed))
     return next((row for row in table(name) if row["id"] == wanted), None)
 
 

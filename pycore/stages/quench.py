@@ -164,7 +164,7 @@ def quench(job, steel, section, heat, aim_HRC):
                 steel, len(PLACES), section.half_thickness_mm, _hardens_mm(steel, kind)
             )
         else:
-            found = structure.structure_of(steel, time_s, curves, ROOM_C)
+            found = structure.structure_of(steel, time_s, curves, ROOM_C, PLACES, section.half_thickness_mm)
         risk = crack_risk(job, steel, section, bath.medium, kind)
         results.append((bath, row, time_s, curves, found, risk))
     chosen = _choose(job, results, aim_HRC)

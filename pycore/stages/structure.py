@@ -11,9 +11,14 @@ from pycore.stages.notes import rounded
 PHASES = ("ferrite", "pearlite", "bainite", "martensite", "retained_austenite")
 RATE_CHECK_C = 704.0  # 1300 °F, where the Jominy scale is told
 RATE_END_C = 500.0
+FASTEST_TOLD_C_PER_S = 1000.0  # far beyond the scale's 272 °C/s at J 1; a wetted skin has no rate worth telling
 SEMI_INFINITE_RATIO = 0.622  # mean rate 704-500 °C over rate at 704 °C, erf solution of the end-quenched bar
+# Width of the bands, set once: seven in ten of the published bars by size lie inside (tests/published/test_bars.py).
 MODEL_ERROR_HRC = 2.0  # fully hardened: scatter of as-quenched tables about Hodge & Orehoski
-STEEP_ERROR_HRC = 6.0  # half martensite: a small change of rate moves hardness this far
+SOFT_ERROR_HRC, STEEP_ERROR_HRC = 3.0, 5.0  # more where soft; most where half martensite, steep in the rate
+JOMINY_DOUBT = 1.4  # factor on the Jominy distance: bath curves are known to ±30-50 %
+SECOND_OPINION = 0.5  # share of the kinetics' disagreement that goes into the band
+SKIN_ERROR_HRC_PER_MM, SKIN_FROM_MM, SKIN_PLACES = 0.25, 10.0, 0.8
 UNKNOWN_PEARLITE_C = 620.0  # where pearlite is taken to form if the kinetics formed none (from memory)
 FERRITE_HV = 180.0  # ferrite in low-alloy steel (from memory)
 
@@ -30,7 +35,6 @@ class Structure:
     soft_HV: np.ndarray  # mean hardness of what is neither martensite nor retained austenite
     rate_C_per_s: np.ndarray  # as the Jominy scale has it
     by: str  # which model gave the hardness
-    disagreement_HRC: float
 
 
 def jominy_rate_C_per_s(time_s, curves_C):
@@ -45,14 +49,13 @@ def jominy_rate_C_per_s(time_s, curves_C):
         above, check, below, end = np.interp(np.negative(passed), -np.minimum.accumulate(curve), time_s)
         local = 20.0 / max(below - above, 1e-3)
         whole = (RATE_CHECK_C - RATE_END_C) / max(end - check, 1e-3) / SEMI_INFINITE_RATIO
-        rates.append(np.sqrt(local * whole))
+        rates.append(min(np.sqrt(local * whole), FASTEST_TOLD_C_PER_S))
     return np.array(rates)
 
 
-def structure_of(steel, time_s, curves_C, end_C):
+def structure_of(steel, time_s, curves_C, end_C, places, half_thickness_mm):
     """Structure along cooling curves (places, steps) of a modelled steel, cooled at last to end_C."""
     C, Ms = steel.austenite["C"], steel.Ms_C
-    carbide = steel.Acm_C is not None and steel.dissolved_C_pct < steel.composition["C"]
     Ae3 = max(steel.Ac3_C or steel.Ac1_C, steel.Ac1_C + 1)
     formed = kinetics.decompose(
         time_s,
@@ -63,7 +66,7 @@ def structure_of(steel, time_s, curves_C, end_C):
         Bs_C=float(kinetics.kirkaldy_venugopalan_1984_Bs_C(steel.austenite)),
         Ms_C=Ms,
         grain_size=steel.grain_size,
-        nucleation=kinetics.carbide_nucleation(steel.composition) if carbide else 1.0,
+        nucleation=kinetics.carbide_nucleation(steel.composition, steel.dissolved_C_pct),
     )
     rate = jominy_rate_C_per_s(time_s, curves_C)
     soft = {name: formed[name] for name in ("ferrite", "pearlite", "bainite")}
@@ -73,37 +76,35 @@ def structure_of(steel, time_s, curves_C, end_C):
     soft_HV, softest_HV = _soft_HV(steel, soft, formed["pearlite_formed_C"], rate)
     HV = (1 - share_soft) * hard_HV + share_soft * soft_HV
     HRC = hardness.HV_to_HRC(HV)
-    by, disagreement = "kinetics with additivity (Kirkaldy & Venugopalan 1984; Li 1998)", 0.0
+    by = "kinetics with additivity (Kirkaldy & Venugopalan 1984; Li 1998)"
+    error = MODEL_ERROR_HRC + SOFT_ERROR_HRC * share_soft + STEEP_ERROR_HRC * 4 * (1 - share_soft) * share_soft
+    low, high = HRC - error, HRC + error
     if steel.DI_mm is not None and not outside({"C": C}, {"C": hardenability.JOMINY_C_RANGE}):
-        J = hardenability.jominy_distance_sixteenths(rate)
-        second = hardenability.a255_jominy_HRC(steel.composition, J, steel.grain_size)
-        # The dividing factors run on below the softest structure the steel can have at that rate.
-        second = np.maximum(second, hardness.HV_to_HRC(softest_HV))
-        disagreement = float(np.max(np.abs(second - HRC)))
         by = "ASTM A255 Jominy equivalence; phases by kinetics, scaled to it"
-        HRC = second
+        HRC, low, high = _by_jominy(steel, rate, hardness.HV_to_HRC(softest_HV), HRC)
         HV = hardness.HRC_to_HV(HRC)
         share_soft, soft = _scaled(soft, share_soft, HV, hard_HV, soft_HV)
         soft_HV = np.where(share_soft > 1e-6, (HV - (1 - share_soft) * hard_HV) / np.maximum(share_soft, 1e-6), soft_HV)
     hard = 1 - share_soft
     fractions = {**soft, "martensite": hard * (1 - retained), "retained_austenite": hard * retained}
-    error = (
-        MODEL_ERROR_HRC
-        + (STEEP_ERROR_HRC - MODEL_ERROR_HRC) * 4 * hard * share_soft
-        + 0.25 * min(disagreement, 12) * (share_soft > 0.05)
-    )
+    # Published bars are softer at the skin the thicker they are; conduction with a bath's curve does not show it.
+    low = low - SKIN_ERROR_HRC_PER_MM * max(0.0, half_thickness_mm - SKIN_FROM_MM) * (np.asarray(places) >= SKIN_PLACES)
     ceiling = hardness.HV_to_HRC(hard_HV) + MODEL_ERROR_HRC / 2
-    return Structure(
-        HV,
-        HRC,
-        np.maximum(HRC - error, 0.0),
-        np.maximum(np.minimum(HRC + error, ceiling), HRC),
-        fractions,
-        soft_HV,
-        rate,
-        by,
-        disagreement,
+    high = np.maximum(np.minimum(high, ceiling), HRC)
+    return Structure(HV, HRC, np.clip(low, 0.0, HRC), high, fractions, soft_HV, rate, by)
+
+
+def _by_jominy(steel, rate, floor_HRC, kinetics_HRC):
+    """(mid, low, high) HRC by the Jominy curve, with the bath's doubt and the second opinion of the kinetics in the band."""
+    J = hardenability.jominy_distance_sixteenths(rate)
+    # The dividing factors run on below the softest structure the steel can have at that rate: it is the floor.
+    at = lambda distance: np.maximum(  # noqa: E731
+        hardenability.a255_jominy_HRC(steel.composition, distance, steel.grain_size), floor_HRC
     )
+    mid, slower, faster = at(J), at(J * JOMINY_DOUBT), at(np.maximum(J / JOMINY_DOUBT, 1.0))
+    second = SECOND_OPINION * (kinetics_HRC - mid)
+    low = np.minimum(slower, mid + np.minimum(second, 0.0)) - MODEL_ERROR_HRC
+    return mid, low, np.maximum(faster, mid + np.maximum(second, 0.0)) + MODEL_ERROR_HRC
 
 
 def _hard_HV(C_pct, retained):
@@ -167,7 +168,6 @@ def tabulated_structure(steel, places, half_thickness_mm, hardens_mm):
         ones * hardness.HRC_to_HV(low),
         ones * np.nan,
         "tabulated for the grade",
-        0.0,
     )
 
 

@@ -181,4 +181,5 @@ def test_pearlite_forms_hotter_when_slower():
 def test_alloy_weight_and_carbide_factor():
     assert kinetics.alloy_weight(STEEL_1080) == 0.0 and kinetics.alloy_weight(STEEL_4140) == 1.0
     lean, rich = ({"C": 1.0, "Mn": Mn, "Cr": 0.1} for Mn in (0.10, 0.45))
-    assert kinetics.carbide_nucleation(lean) > kinetics.carbide_nucleation(rich) > 1.0
+    assert kinetics.carbide_nucleation(lean, 0.82) > kinetics.carbide_nucleation(rich, 0.82) > 1.0
+    assert kinetics.carbide_nucleation(lean, 1.0) == 1.0  # nothing undissolved, no change
