@@ -9,7 +9,7 @@ EUTECTOID_C_PCT, FERRITE_C_PCT = 0.76, 0.02
 # Steel atlas; from memory); the bainite speed there is counted as pearlite.
 NEAR_EUTECTOID_C_PCT, PEARLITE_DOWN_TO_C = 0.60, 500.0
 CARBIDE_FACTOR, CARBIDE_MN_PCT, CARBIDE_MN_TERM = 2.8, 0.30, 4.36  # see carbide_nucleation
-CARBIDE_MN_RANGE_PCT, CARBIDE_FULL_AT_C_PCT = (0.09, 0.50), 0.05
+CARBIDE_LEAST_MN_PCT, CARBIDE_FULL_AT_C_PCT = 0.09, 0.05
 SEED = 1e-4  # fraction from which growth is stepped; the time integral is finite down to zero
 
 
@@ -77,13 +77,13 @@ def carbide_nucleation(composition, dissolved_C_pct):
     """How much faster pearlite and bainite start where carbide is left undissolved.
 
     Inputs: composition {element: wt %}, numbers; dissolved_C_pct, wt % carbon in the austenite. Returns: factor >= 1, -.
-    Valid: hypereutectoid steel, Mn 0.09 to 0.5 % (held beyond), C 0.94 to 1.09 %, about 790 °C. Raises: nothing.
+    Valid: hypereutectoid steel, Mn 0.09 to 0.5 % (1 is the floor beyond), C 0.94 to 1.09 %, about 790 °C. Raises: nothing.
     Source: one factor, set once on the observed critical diameters of twelve W-type heats in brine (Roberts, Krauss &
         Kennedy, Tool Steels, ASM, Table 7-3); its manganese term is Li et al. 1998's for pearlite, which
         Kirkaldy-Venugopalan lack, and fades where Li's speeds take over. It comes in over the first 0.05 % of carbon
         left undissolved (our own choice, so that there is no jump).
     """
-    Mn = min(max(float(composition.get("Mn", 0.0)), CARBIDE_MN_RANGE_PCT[0]), CARBIDE_MN_RANGE_PCT[1])
+    Mn = max(float(composition.get("Mn", 0.0)), CARBIDE_LEAST_MN_PCT)
     full = CARBIDE_FACTOR * float(np.exp(-CARBIDE_MN_TERM * (Mn - CARBIDE_MN_PCT) * (1 - alloy_weight(composition))))
     share = min(1.0, max(0.0, float(composition.get("C", 0.0)) - dissolved_C_pct) / CARBIDE_FULL_AT_C_PCT)
     return 1.0 + (max(full, 1.0) - 1.0) * share
