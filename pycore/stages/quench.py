@@ -10,7 +10,7 @@ from pycore.physics import bath as bath_physics
 from pycore.physics import conduction, quench_media, steel_properties
 from pycore.stages import structure
 from pycore.stages.notes import mark, note, rounded
-from pycore.stages.risk import crack_risk
+from pycore.stages.risk import MEANT_FOR, crack_risk, gentleness
 
 ROOM_C = 20.0
 PLACES = (1.0, 0.95, 0.9, 0.8, 0.7, 0.6, 0.5, 0.4, 0.3, 0.15, 0.0)  # relative distance from the centre
@@ -21,6 +21,7 @@ OUT_ABOVE_BATH_K = 10.0
 ENTRY_ABOVE_AC1_K, ENTRY_BELOW_AC3_K = 20.0, 15.0  # common practice: enter above about Ac1 + 20-30 K
 ALLOWED_RISE_K = {"water": 10.0, "oil": 38.0}  # oil: 1 US gal/lb rule; water: common practice
 LONGEST_QUENCH_S = 5 * 3600.0
+THIN_FOR_OIL_MM = 6.35  # under 1/4 in plain carbon steel may be quenched in oil (Heat Treater's Guide)
 HARDER_THAN_AIM_HRC = 1.0  # what tempering needs to come down from, above the middle of the aim
 WATER_HOTTEST_C = 95.0
 BATH_ORDER = ("still-air", "fan-air", "plates", "canola", "medium-oil", "fast-oil", "water", "brine")  # mildest first
@@ -167,27 +168,30 @@ def quench(job, steel, section, heat, aim_HRC):
             found = structure.structure_of(steel, time_s, curves, ROOM_C, PLACES, section.half_thickness_mm)
         risk = crack_risk(job, steel, section, bath.medium, kind)
         results.append((bath, row, time_s, curves, found, risk))
-    chosen = _choose(job, results, aim_HRC)
+    chosen = _choose(job, steel, section, results, aim_HRC)
     return _result(
         job, steel, section, heat, results, chosen, rises, needs, working, out_C, walk_s, limit_s, lowest_C, entry
     )
 
 
-def _choose(job, results, aim_HRC):
+def _choose(job, steel, section, results, aim_HRC):
     """Index of the bath to take.
 
-    In order: within the aim at the surface, no high crack risk, room to temper, depth, then the mildest.
+    In order: within the aim at the surface, no high crack risk, not milder than the grade is meant for (the kinetics
+    are only sure to a factor of two or three), room to temper, depth, then the mildest.
     """
     if "medium" in job.decided:
         return next(i for i, r in enumerate(results) if r[0].medium == job.decided["medium"])
     low, high = aim_HRC
     room = (low + high) / 2 + HARDER_THAN_AIM_HRC
+    meant_for = MEANT_FOR[steel.hardening] + (steel.hardening == "water" and section.width_mm <= THIN_FOR_OIL_MM)
 
     def rank(i):
-        bath, _, _, _, found, risk = results[i]
+        bath, row, _, _, found, risk = results[i]
         surface, centre = (found.HRC[SURFACE], found.HRC[CENTRE]) if found is not None else (-1.0, -1.0)
         short = 0 if surface >= low + 0.5 else round(low + 0.5 - surface)
-        return (short, risk["grade"] == "high", surface < room, centre < room, BATH_ORDER.index(bath.medium))
+        milder = gentleness(row["kind"]) > meant_for
+        return (short, risk["grade"] == "high", milder, surface < room, centre < room, BATH_ORDER.index(bath.medium))
 
     return min(range(len(results)), key=rank)
 

@@ -6,11 +6,15 @@ LIMITS = (("low", 4.0), ("moderate", 6.5), ("high", 1e9))
 MEANT_FOR = {"water": 0, "oil": 1, "air": 2}
 
 
+def gentleness(kind):
+    """How mild a kind of medium is, on the scale of MEANT_FOR."""
+    return {"water": 0, "oil": 1}.get(kind, 2)
+
+
 def crack_risk(job, steel, section, medium, kind):
     """{"grade": low, moderate or high, "reasons": [...]} for a part quenched in a medium."""
     points, reasons = MEDIUM_POINTS.get(medium, 0.0), []
-    gentle = 2 if kind in ("gas", "plates") else 1 if kind == "oil" else 0
-    harsher_by = MEANT_FOR[steel.hardening] - gentle
+    harsher_by = MEANT_FOR[steel.hardening] - gentleness(kind)
     if harsher_by > 0:
         points += 1.5 * harsher_by + (0.5 if kind == "water" else 0.0)
         reasons.append(
