@@ -294,7 +294,7 @@ def _aim(read, data):
 
 def _heat(read, shop):
     section = read.section(shop, "heat", "shop.heat")
-    kind = read.word(section, "kind", "shop.heat.kind", words.HEATS) if section else None
+    kind = read.word(section, "kind", "shop.heat.kind", words.HEATS) if isinstance(shop.get("heat"), dict) else None
     pyrometer = section.get("pyrometer")
     if pyrometer is None:
         pyrometer = kind in ("kiln", "salt")
@@ -356,7 +356,9 @@ def _check_bath(read, path, row, temperature_C):
 
 def _temper(read, shop):
     section = read.section(shop, "temper", "shop.temper")
-    kind = read.word(section, "kind", "shop.temper.kind", words.TEMPERS) if section else None
+    kind = (
+        read.word(section, "kind", "shop.temper.kind", words.TEMPERS) if isinstance(shop.get("temper"), dict) else None
+    )
     largest = read.number(
         section,
         "max_C",

@@ -17,6 +17,7 @@ def main(sheet: Path, target: Path, chromium: str) -> None:
         page.emulate_media(media="print")
         page.goto(sheet.resolve().as_uri())
         page.evaluate("document.fonts.ready")
+        page.evaluate("document.body.style.paddingTop = '10mm'")  # the margin that the paper would have
         page.screenshot(path=target, clip={"x": 0, "y": 0, **A4})
         browser.close()
 
