@@ -99,7 +99,8 @@ def job_of(data, inside_sheet=False):
     if not isinstance(data, dict):
         refuse(type(data).__name__, ACCEPTED)
     schema = data.get("schema")
-    if schema == JOB_SCHEMA and not inside_sheet:
+    written_by_hand = schema is None and data.keys() >= {"steel", "part", "aim", "shop"}
+    if not inside_sheet and (schema == JOB_SCHEMA or written_by_hand):
         return data
     if schema != SCHEMA:
         refuse(schema if isinstance(schema, str) else "no schema", f'a file with the schema "{SCHEMA}" or "{JOB_SCHEMA}"')

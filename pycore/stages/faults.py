@@ -3,7 +3,7 @@
 
 def faults(job, steel, heat, quenched, temper, aim_HRC):
     """What to do if it comes out soft, hard, bent or cracked."""
-    again = ("Anneal" if steel.normalize == "never" else "Normalize") + ", then harden once more"
+    again = ("anneal" if steel.normalize == "never" else "normalize") + ", then harden once more"
     slow = {
         "water": "a still or warm bath",
         "oil": "oil too cold and thick, or too little of it",
@@ -11,7 +11,7 @@ def faults(job, steel, heat, quenched, temper, aim_HRC):
         "plates": "scale between the plates",
     }[quenched.kind]
     hotter = "" if temper.reached else f" This oven stops at {job.temper.max_C:g} °C."
-    vinegar = "Scrap it: no heat closes a crack. Next one: "
+    scrap = "Scrap it: no heat closes a crack. Next one: "
     cooler = "10 °C cooler, " if heat.measured_by == "pyrometer" else "a shade cooler, "
     return (
         {
@@ -27,7 +27,7 @@ def faults(job, steel, heat, quenched, temper, aim_HRC):
         {
             "sign": f"Under {aim_HRC[0]:g} HRC after it",
             "cause": "oven too hot, or soft from the quench",
-            "then": f"Tempering cannot bring it back. {again}.",
+            "then": f"Tempering cannot bring it back: {again}.",
         },
         {
             "sign": "Bent",
@@ -37,6 +37,6 @@ def faults(job, steel, heat, quenched, temper, aim_HRC):
         {
             "sign": "Cracked",
             "cause": "too hot, sharp corner, late temper",
-            "then": vinegar + cooler + "corners rounded, into the temper sooner.",
+            "then": scrap + cooler + "corners rounded, into the temper sooner.",
         },
     )

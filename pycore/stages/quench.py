@@ -18,6 +18,7 @@ SURFACE, MIDRADIUS, CENTRE = 0, PLACES.index(0.5), len(PLACES) - 1
 TRANSFER_CAP_S = {"water": 3.0, "oil": 5.0, "plates": 10.0, "gas": 20.0}  # common practice
 OUT_C = {"water": 50.0, "oil": 65.0, "plates": 50.0, "gas": 60.0}  # hand-warm; supplier sheets 50-65 °C
 OUT_ABOVE_BATH_K = 10.0
+TIP_COLD_C = 120.0  # a tip is cold enough to polish, the body behind it still hot (common practice)
 ENTRY_ABOVE_AC1_K, ENTRY_BELOW_AC3_K = 20.0, 15.0  # common practice: enter above about Ac1 + 20-30 K
 ALLOWED_RISE_K = {"water": 10.0, "oil": 38.0}  # oil: 1 US gal/lb rule; water: common practice
 LONGEST_QUENCH_S = 5 * 3600.0
@@ -142,7 +143,11 @@ def quench(job, steel, section, heat, aim_HRC):
         min(bath.temperature_C + (rise or 0.0) / 2, WATER_HOTTEST_C if kind == "water" else 400.0)
         for bath, rise, kind in zip(baths, rises, kinds)
     ]
-    out_C = [max(OUT_C[kind], T + OUT_ABOVE_BATH_K) for kind, T in zip(kinds, working)]
+    hot_body = job.temper.kind == "residual-heat"  # the body's heat is wanted back: lift the zone out early
+    out_C = [
+        max(TIP_COLD_C if hot_body and kind in ("water", "oil") else OUT_C[kind], T + OUT_ABOVE_BATH_K)
+        for kind, T in zip(kinds, working)
+    ]
     walk_s = min(limit_s, min(TRANSFER_CAP_S[kind] for kind in kinds))
     walk = conduction.conduct(
         section.geometry,
@@ -199,6 +204,10 @@ def _choose(job, steel, section, results, aim_HRC):
 def _result(job, steel, section, heat, results, chosen, rises, needs, working, out_C, walk_s, limit_s, lowest_C, entry):
     bath, row, time_s, curves, found, risk = results[chosen]
     kind, marks = row["kind"], []
+    if job.temper.kind == "residual-heat" and job.part.zone == "all":
+        marks.append(
+            mark("temper.temperature_C", "residual heat needs a body left hot: it serves a tip or an edge only")
+        )
     if walk_s < 1.0:
         marks.append(
             mark(
@@ -207,13 +216,13 @@ def _result(job, steel, section, heat, results, chosen, rises, needs, working, o
             )
         )
     if words.is_liquid(row) and bath.volume_L is None:
-        marks.append(mark("quench.bath_rise_C", "not computed: the volume of the bath is not given"))
+        marks.append(mark("quench.bath_rise_C", "the volume of the bath is not given"))
     if found is None:
         limit = _hardens_mm(steel, kind)
         marks.append(
             mark(
                 "as_quenched",
-                f"not computed: {section.width_mm:g} mm is beyond the {limit:g} mm the grade's sheet "
+                f"{section.width_mm:g} mm is beyond the {limit:g} mm the grade's sheet "
                 f"hardens through in this medium, and no model holds for this steel",
             )
         )

@@ -134,9 +134,7 @@ def steel_of(job):
     DI_mm = None
     out = outside(composition, hardenability.A255_RANGE)
     if hyper or basis == "tabulated":
-        marks.append(
-            mark("steel.DI_mm", "ideal diameter not computed: ASTM A255 does not hold where carbides stay undissolved")
-        )
+        marks.append(mark("steel.DI_mm", "no ideal diameter: ASTM A255 does not hold where carbides stay undissolved"))
     else:
         DI_mm = float(hardenability.a255_ideal_diameter_in(composition, grain)) * hardenability.INCH_MM
         if out:

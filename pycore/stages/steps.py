@@ -32,7 +32,7 @@ def steps(job, steel, section, heat, quenched, cold, temper, aim_HRC, use, cauti
         _heat(job, steel, section, heat),
         _soak(job, section, heat),
         _plunge(job, section, quenched),
-        _out(quenched),
+        _out(job, quenched),
     ]
     listed.append(_check(quenched, section))
     if cold is not None:
@@ -198,7 +198,7 @@ def _plunge(job, section, quenched):
     return _step("transfer", f"Into the {name} within {within}", at, "", look, f"{name} at")
 
 
-def _out(quenched):
+def _out(job, quenched):
     out = quenched.out_of_bath_C
     time = f"after about {say.seconds(quenched.time_in_bath_s)}"
     if quenched.kind in ("gas", "plates"):
@@ -210,6 +210,9 @@ def _out(quenched):
             f"True it while above {CLAMP_WINDOW_C:.0f} °C, gloved; below that stop bending.",
             "time",
         )
+    if job.temper.kind == "residual-heat":
+        look = "The zone is black and cold enough to polish; the body must still hold heat. Do not strike it."
+        return _step("out", "Lift out, the body still hot", say.temperature(nearest(out, 5)), time, look, "time")
     if out <= HAND_WARM_C:
         return _step(
             "out",

@@ -155,7 +155,7 @@ def temper(job, steel, section, quenched, found, aim_HRC):
             )
     heat_up = None
     if job.temper.kind in ("torch", "residual-heat"):
-        marks.append(mark("temper.heat_up_min", "not computed: the colour tells when it is there"))
+        marks.append(mark("temper.heat_up_min", "the colour tells when it is there"))
     else:
         heat_up = _heat_up_min(job, section, chosen, oven)
     final, arrays = _final(response, found, chosen, total_h, accuracy)

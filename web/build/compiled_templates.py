@@ -6,9 +6,6 @@ from pathlib import Path
 
 sys.path.insert(0, str(Path(__file__).resolve().parents[2]))
 
-from pycore.sheet import templates
+from pycore.sheet.templates import compiled_modules
 
-# defer_init: the module must not ask for the environment before the template is made from it.
-json.dump({templates.module_name(name) + ".py":
-           templates.environment().compile(templates.read(name), name, name, raw=True, defer_init=True)
-           for name in templates.NAMES}, sys.stdout)
+json.dump(compiled_modules(), sys.stdout)
