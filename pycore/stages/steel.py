@@ -15,6 +15,7 @@ SILENT_PCT = {"Mn": 0.60, "Si": 0.22}
 # estimate, set on retained austenite of 52100 quenched from 816-871 °C and on 1095 at 800 °C (0.80-0.90 %).
 SOAK_SHARE, HELD_BY_CR = 0.93, 0.20
 CR_IN_CARBIDE = 0.6  # share of Cr lost with the carbide, per share of carbon left undissolved (estimate)
+MN_PER_S, COMMON_S_PCT = 54.94 / 32.06, 0.03  # what the factors of A255 already hold is left in
 HYPEREUTECTOID_C_PCT = 0.77
 HIGH_ALLOY_PCT = {"Cr": 3.0, "Mo": 1.0, "W": 2.0, "V": 0.6, "Ni": 4.0}
 
@@ -125,6 +126,9 @@ def steel_of(job):
     temperature = job.decided.get("austenitize_C", usual)
     dissolved = _dissolved(composition, known, temperature, usual)
     austenite = dict(composition, C=dissolved)
+    # Sulfur ties manganese up as MnS (atomic masses 54.94 and 32.06); the rest hardens.
+    sulfide = MN_PER_S * max(0.0, composition.get("S", 0.0) - COMMON_S_PCT)
+    austenite["Mn"] = max(0.0, composition.get("Mn", 0.0) - sulfide)
     austenite["Cr"] = composition.get("Cr", 0.0) * (1 - CR_IN_CARBIDE * (1 - dissolved / composition["C"]))
     Ms_formula = float(martensite.martensite_start_C(austenite))
     Ms = Ms_formula
@@ -136,7 +140,7 @@ def steel_of(job):
     if hyper or basis == "tabulated":
         marks.append(mark("steel.DI_mm", "no ideal diameter: ASTM A255 does not hold where carbides stay undissolved"))
     else:
-        DI_mm = float(hardenability.a255_ideal_diameter_in(composition, grain)) * hardenability.INCH_MM
+        DI_mm = float(hardenability.a255_ideal_diameter_in(austenite, grain)) * hardenability.INCH_MM
         if out:
             marks.append(mark("steel.DI_mm", "outside the range of ASTM A255: " + say(out)))
     elements = ", ".join(f"{e} {composition[e]:g}" for e in sorted(composition, key=lambda e: (e != "C", e)))

@@ -99,7 +99,7 @@ def _by_jominy(steel, rate, floor_HRC, kinetics_HRC):
     J = hardenability.jominy_distance_sixteenths(rate)
     # The dividing factors run on below the softest structure the steel can have at that rate: it is the floor.
     at = lambda distance: np.maximum(  # noqa: E731
-        hardenability.a255_jominy_HRC(steel.composition, distance, steel.grain_size), floor_HRC
+        hardenability.a255_jominy_HRC(steel.austenite, distance, steel.grain_size), floor_HRC
     )
     mid, slower, faster = at(J), at(J * JOMINY_DOUBT), at(np.maximum(J / JOMINY_DOUBT, 1.0))
     second = SECOND_OPINION * (kinetics_HRC - mid)

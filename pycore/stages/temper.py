@@ -125,8 +125,12 @@ def temper(job, steel, section, quenched, found, aim_HRC):
     curve_HRC = response.HRC(GRID_C, total_h)
     # Where no structure is known the temper is still that of the hardened steel.
     surface = curve_HRC if found is None else tempered_HRC(response, found, GRID_C, total_h, SURFACE)
-    needs = _first_at_most(GRID_C, surface, target)
-    window = (_first_at_most(GRID_C, surface, high), _last_at_least(GRID_C, surface, low))
+    # Steel with secondary hardness is tempered on the far side of its peak; its sheet says from where.
+    published = steel.temperatures.get("temper_C")
+    allowed = (published[0] if published else LOWEST_C) <= GRID_C
+    grid, surface = GRID_C[allowed], surface[allowed]
+    needs = _first_at_most(grid, surface, target)
+    window = (_first_at_most(grid, surface, high), _last_at_least(grid, surface, low))
     reached, longer = True, None
     if needs is None:
         needs, reached = float(GRID_C[-1]), False
@@ -142,6 +146,13 @@ def temper(job, steel, section, quenched, found, aim_HRC):
             if not reached:
                 longer = _longer(response, found, hottest, high, cycles)
     chosen = max(chosen, min(LOWEST_C, hottest)) if "temper_C" not in job.decided else chosen
+    if published and not published[0] <= chosen <= published[2]:
+        marks.append(
+            mark(
+                "temper.temperature_C",
+                f"outside the {published[0]:g}-{published[2]:g} °C the grade's sheet asks for: {published[3]}",
+            )
+        )
     if response.fit:
         out = outside(dict(steel.composition, C=steel.dissolved_C_pct), tempering.FIT_RANGE)
         if out:

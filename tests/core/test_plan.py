@@ -268,3 +268,14 @@ def test_id_belongs_to_the_job():
 def test_dates_are_the_callers():
     assert plan(sample()).to_json()["date"] is None
     assert plan(sample()).to_json("2026-12-01")["date"] == "2026-12-01"
+
+
+def test_sulfur_ties_manganese_up():
+    """MnS: 1.71 % manganese to 1 % sulfur (atomic masses 54.94 and 32.06); free-cutting steel hardens less deep for it."""
+
+    def steel(S):
+        chemistry = {"C": 0.45, "Mn": 1.5, "Si": 0.2, "S": S}
+        return plan(dict(sample("punch"), steel={"chemistry": chemistry})).steel
+
+    assert steel(0.28).austenite["Mn"] == pytest.approx(1.5 - 1.714 * 0.25, abs=0.005)
+    assert steel(0.28).DI_mm < steel(0.02).DI_mm
