@@ -22,20 +22,27 @@ def main(arguments=None):
     format_ = options.format or _format_of(options.output) or ("text" if single else "json")
     if not single and format_ != "json":
         return _fail("several jobs are written as JSON Lines: use --format json", FAULTY)
+    by_line = not single or (
+        options.format == "json" and options.jobs == ["-"]
+    )  # one line a job, whatever becomes of it
     lines, status = [], 0
     for _, where, job, fault in jobs:
-        try:
-            if fault is not None:
-                raise InputErrors([fault])
-            made = plan(job).to_json(date)
-        except InputErrors as errors:
-            status = FAULTY
-            for error in errors.faults:
-                print(f"{where}: {error.message}", file=sys.stderr)
-            if not single:
-                lines.append(json.dumps({"errors": errors.to_json()}, ensure_ascii=False, allow_nan=False))
-            continue
-        lines.append(_write(made, format_, single))
+        errors = [fault] if fault is not None else []
+        if not errors:
+            try:
+                lines.append(_write(plan(job).to_json(date), format_, by_line))
+                continue
+            except InputErrors as found:
+                errors = found.faults
+            except Exception as bug:  # one job must not stop the others; alone it may show its traceback
+                if single:
+                    raise
+                errors = [Fault("job", f"{type(bug).__name__}: {bug}", "a report to the developers: this is a bug")]
+        status = FAULTY
+        for error in errors:
+            print(f"{where}: {error.message}", file=sys.stderr)
+        if by_line:
+            lines.append(_compact({"errors": InputErrors(errors).to_json()}))
     text = "\n".join(lines)
     if text:
         _put(text if text.endswith("\n") else text + "\n", options.output)
@@ -77,6 +84,7 @@ def _read_jobs(names):
 
 def _jobs_in(text, name, many):
     """One JSON document, a saved sheet, or a job on every line."""
+    many = many or _is_lines(name)
     if "<script" in text[:5_000_000] and text.lstrip().startswith("<"):
         from pycore.sheet import open_sheet
 
@@ -95,7 +103,7 @@ def _jobs_in(text, name, many):
             yield many or len(documents) > 1, name if len(documents) == 1 else f"{name}[{i}]", job, None
         return
     lines = [(n, line) for n, line in enumerate(text.splitlines(), 1) if line.strip()]
-    if len(lines) < 2:
+    if len(lines) < 2 and not _is_lines(name):
         yield many, name, None, _not_json(text)
         return
     for n, line in lines:
@@ -103,6 +111,10 @@ def _jobs_in(text, name, many):
             yield True, f"{name}:{n}", _load(line), None
         except ValueError:
             yield True, f"{name}:{n}", None, _not_json(line)
+
+
+def _is_lines(name):
+    return name.lower().endswith((".jsonl", ".ndjson"))
 
 
 def _load(text):
@@ -123,12 +135,16 @@ def _not_json(text):
     return Fault("job", text[:60], "a job as a JSON object")
 
 
-def _write(made, format_, single):
+def _write(made, format_, by_line):
     if format_ == "json":
-        return json.dumps(made, ensure_ascii=False, allow_nan=False, indent=1 if single else None)
+        return _compact(made) if by_line else json.dumps(made, ensure_ascii=False, allow_nan=False, indent=1)
     from pycore.sheet import save_sheet, sheet_text
 
     return save_sheet(made) if format_ == "html" else sheet_text(made)
+
+
+def _compact(value):
+    return json.dumps(value, ensure_ascii=False, allow_nan=False)
 
 
 def _put(text, output):

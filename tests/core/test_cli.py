@@ -89,6 +89,20 @@ def test_json_lines_from_standard_input():
     assert [json.loads(line)["title"] for line in done.stdout.splitlines()] == ["Cold chisel", "Leaf spring"]
 
 
+def test_one_job_by_standard_input_is_one_line():
+    good = call("-", "--format", "json", given=json.dumps(sample()))
+    bad = call("-", "--format", "json", given=json.dumps(sample(quantity=-1)))
+    assert len(good.stdout.splitlines()) == 1 and json.loads(good.stdout)["title"] == "Cold chisel"
+    assert json.loads(bad.stdout)["errors"][0]["path"] == "quantity" and bad.returncode == 2
+
+
+def test_json_lines_of_one_line(tmp_path):
+    path = tmp_path / "jobs.jsonl"
+    path.write_text(json.dumps(sample(quantity=-1)) + "\n", encoding="utf-8")
+    done = call(path)
+    assert "errors" in json.loads(done.stdout) and done.returncode == 2
+
+
 def test_a_list_of_jobs():
     done = call("-", given=json.dumps([sample(), sample("punch")]))
     assert len(done.stdout.splitlines()) == 2 and done.returncode == 0
