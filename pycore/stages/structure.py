@@ -19,6 +19,7 @@ SOFT_ERROR_HRC, STEEP_ERROR_HRC = 3.0, 5.0  # more where soft; most where half m
 JOMINY_DOUBT = 1.4  # factor on the Jominy distance: bath curves are known to ±30-50 %
 SECOND_OPINION = 0.5  # share of the kinetics' disagreement that goes into the band
 SKIN_ERROR_HRC_PER_MM, SKIN_FROM_MM, SKIN_PLACES = 0.25, 10.0, 0.8
+MARTENSITE_SHARES = (0.5, 0.8, 0.9, 0.95, 0.999)  # columns of Hodge & Orehoski 1946
 UNKNOWN_PEARLITE_C = 620.0  # where pearlite is taken to form if the kinetics formed none (from memory)
 FERRITE_HV = 180.0  # ferrite in low-alloy steel (from memory)
 
@@ -83,8 +84,7 @@ def structure_of(steel, time_s, curves_C, end_C, places, half_thickness_mm):
         by = "ASTM A255 Jominy equivalence; phases by kinetics, scaled to it"
         HRC, low, high = _by_jominy(steel, rate, hardness.HV_to_HRC(softest_HV), HRC)
         HV = hardness.HRC_to_HV(HRC)
-        share_soft, soft = _scaled(soft, share_soft, HV, hard_HV, soft_HV)
-        soft_HV = np.where(share_soft > 1e-6, (HV - (1 - share_soft) * hard_HV) / np.maximum(share_soft, 1e-6), soft_HV)
+        share_soft, soft = _scaled(steel, soft, share_soft, HRC, hardness.HV_to_HRC(softest_HV))
     hard = 1 - share_soft
     fractions = {**soft, "martensite": hard * (1 - retained), "retained_austenite": hard * retained}
     # Published bars are softer at the skin the thicker they are; conduction with a bath's curve does not show it.
@@ -133,9 +133,16 @@ def _soft_HV(steel, soft, formed_C, rate):
     return np.where(total > 1e-6, mixed, bainite), ferrite_pearlite
 
 
-def _scaled(soft, share_soft, HV, hard_HV, soft_HV):
-    """Soft fractions that give the hardness found by the Jominy equivalence, in the proportions of the kinetics."""
-    need = np.clip((hard_HV - HV) / np.maximum(hard_HV - soft_HV, 1.0), 0.0, 1.0)
+def _scaled(steel, soft, share_soft, HRC, softest_HRC):
+    """(soft share, soft fractions) that go with a hardness from the Jominy curve, in the proportions of the kinetics.
+
+    Down to half martensite by Hodge & Orehoski; below, in a straight line to the softest structure.
+    """
+    known = np.array(MARTENSITE_SHARES)
+    HRC_known = np.array([hardness.hodge_orehoski_HRC(steel.austenite["C"], share) for share in known])
+    below = 0.5 * np.clip((HRC - softest_HRC) / np.maximum(HRC_known[0] - softest_HRC, 0.1), 0.0, 1.0)
+    need = 1.0 - np.where(HRC_known[0] > HRC, below, np.interp(HRC, HRC_known, known))
+    need = np.where(need < 2e-3, 0.0, need)  # the table ends at 99.9 %
     none = share_soft < 1e-3
     proportions = {
         name: np.where(none, 1.0 if name == "bainite" else 0.0, value / np.maximum(share_soft, 1e-9))
