@@ -1,9 +1,9 @@
 """The sheet on paper, printed by a real Chromium: as many pages as it promises, and one for the usual jobs."""
 import io
 import re
-import shutil
 
 import pytest
+from pypdf import PdfReader
 
 from pycore.plan import plan
 from pycore.sheet import save_sheet
@@ -38,30 +38,19 @@ JOBS = {"chisel": CHISEL, "pin": PIN, "spring": SPRING, "die": DIE}
 SIZES_PT = {"A4": (595, 842), "Letter": (612, 792)}
 
 
-@pytest.fixture(scope="module")
-def chromium():
-    playwright = pytest.importorskip("playwright.sync_api")
-    with playwright.sync_playwright() as running:
-        found = next((path for name in ("chromium", "chromium-browser") if (path := shutil.which(name))), None)
-        browser = running.chromium.launch(executable_path=found, args=["--no-sandbox"])
-        yield browser
-        browser.close()
-
-
-def printed(chromium, html, paper, **options):
-    pypdf = pytest.importorskip("pypdf")
-    page = chromium.new_page(java_script_enabled=False)
+def printed(browser, html, paper, **options):
+    page = browser.new_page(java_script_enabled=False)
     page.set_content(html)
     pdf = page.pdf(format=paper, prefer_css_page_size=True, **options)
     page.close()
-    return pypdf.PdfReader(io.BytesIO(pdf))
+    return PdfReader(io.BytesIO(pdf))
 
 
 @pytest.mark.parametrize("paper", SIZES_PT)
 @pytest.mark.parametrize("name", JOBS)
-def test_the_paper_has_the_pages_the_sheet_reckoned_with(chromium, name, paper):
+def test_the_paper_has_the_pages_the_sheet_reckoned_with(browser, name, paper):
     html = save_sheet(plan(JOBS[name]).to_json("2026-12-01"))
-    pdf = printed(chromium, html, paper)
+    pdf = printed(browser, html, paper)
     expected = 2 if re.search(rf'class="sheet [^"]*\b{paper.lower()}-two\b', html) else 1
     assert len(pdf.pages) == expected
     assert (float(pdf.pages[0].mediabox.width), float(pdf.pages[0].mediabox.height)) == pytest.approx(SIZES_PT[paper], abs=2)
@@ -72,21 +61,21 @@ def test_the_paper_has_the_pages_the_sheet_reckoned_with(chromium, name, paper):
 
 @pytest.mark.parametrize("paper", SIZES_PT)
 @pytest.mark.parametrize("name", ["chisel", "pin"])
-def test_a_usual_job_takes_one_page(chromium, name, paper):
+def test_a_usual_job_takes_one_page(browser, name, paper):
     html = save_sheet(plan(JOBS[name]).to_json("2026-12-01"))
-    assert len(printed(chromium, html, paper).pages) == 1
+    assert len(printed(browser, html, paper).pages) == 1
 
 
-def test_nothing_is_lost_without_backgrounds(chromium):
+def test_nothing_is_lost_without_backgrounds(browser):
     html = save_sheet(plan(CHISEL).to_json("2026-12-01"))
-    with_fill, without = (printed(chromium, html, "A4", print_background=fill).pages[0].extract_text() for fill in (True, False))
+    with_fill, without = (printed(browser, html, "A4", print_background=fill).pages[0].extract_text() for fill in (True, False))
     assert with_fill == without
 
 
-def test_a_saved_sheet_reads_without_a_script_and_asks_for_nothing(chromium, tmp_path):
+def test_a_saved_sheet_reads_without_a_script_and_asks_for_nothing(browser, tmp_path):
     file = tmp_path / "sheet.html"
     file.write_text(save_sheet(plan(CHISEL).to_json("2026-12-01")), encoding="utf-8")
-    page = chromium.new_page(java_script_enabled=False, viewport={"width": 900, "height": 1200})
+    page = browser.new_page(java_script_enabled=False, viewport={"width": 900, "height": 1200})
     asked = []
     page.on("request", lambda request: asked.append(request.url))
     page.goto(file.as_uri())
