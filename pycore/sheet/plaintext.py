@@ -77,8 +77,8 @@ def sheet_text(plan):
     if rows(plan, "cautions"):
         out += ["", "TAKE CARE", "-" * COLUMNS]
         for row in rows(plan, "cautions"):
-            because = printable(row.get("because"))
-            out += wrapped(printable(row.get("text")) + (f" Because {because}." if because else ""),
+            because = printable(row.get("because")).rstrip(".")
+            out += wrapped(printable(row.get("text")) + (f" {because}." if because else ""),
                            f"! {printable(row.get('signal')).upper()[:8]:<9}")
     if rows(plan, "marks"):
         out += ["", "MARKS", "-" * COLUMNS]

@@ -1,5 +1,7 @@
 """The order of work: the steps as they happen, only those this part needs."""
 
+import re
+
 from pycore import words
 from pycore.lengths import show_length
 from pycore.stages import say
@@ -96,10 +98,11 @@ def _ready(job, section, quenched, temper):
 
 def _prepare(job, steel, heat):
     listed, condition = [], job.part.condition
+    advice = re.sub(r"If it was forged( or overheated)?, (\w)", lambda found: found[2].upper(), steel.prior)
     if condition == "forged" and steel.normalize == "yes" and "normalize_C" in steel.temperatures:
         top = steel.temperatures["normalize_C"][1]
         listed.append(
-            _step("normalize", "Normalize", say.temperature(top), "even, then still air", steel.prior, "heats")
+            _step("normalize", "Normalize", say.temperature(top), "even, then still air", advice, "heats")
         )
     elif condition in ("forged", "hardened"):
         listed.append(
@@ -108,7 +111,7 @@ def _prepare(job, steel, heat):
                 "Soften first" if condition == "forged" else "Undo the old hardening",
                 "",
                 "",
-                steel.prior,
+                advice,
                 "done",
             )
         )
