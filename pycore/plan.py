@@ -134,6 +134,7 @@ def _to_json(plan, date):
             "Ms_C": steel.Ms_C,
             "Mf_C": steel.Mf_C,
             "DI_mm": steel.DI_mm,
+            "jominy": steel.jominy,
             "dissolved_C_pct": steel.dissolved_C_pct,
             "grain_size": steel.grain_size,
             "prior": steel.prior,

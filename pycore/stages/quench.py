@@ -22,6 +22,7 @@ TIP_COLD_C = 120.0  # a tip is cold enough to polish, the body behind it still h
 ENTRY_ABOVE_AC1_K, ENTRY_BELOW_AC3_K = 20.0, 15.0  # common practice: enter above about Ac1 + 20-30 K
 ALLOWED_RISE_K = {"water": 10.0, "oil": 38.0}  # oil: 1 US gal/lb rule; water: common practice
 LONGEST_QUENCH_S = 5 * 3600.0
+MODELS_APART_HRC = 8.0  # beyond the error each of the two models of hardening is known for
 THIN_FOR_OIL_MM = 6.35  # under 1/4 in plain carbon steel may be quenched in oil (Heat Treater's Guide)
 HARDER_THAN_AIM_HRC = 1.0  # what tempering needs to come down from, above the middle of the aim
 WATER_HOTTEST_C = 95.0
@@ -226,6 +227,12 @@ def _result(job, steel, section, heat, results, chosen, rises, needs, working, o
                 f"hardens through in this medium, and no model holds for this steel",
             )
         )
+    if found is not None and found.second_HRC is not None:
+        apart = np.abs(found.HRC - found.second_HRC)
+        if apart.max() > MODELS_APART_HRC:
+            where = ("surface", "mid-radius", "centre")[int(np.argmax(apart[[SURFACE, MIDRADIUS, CENTRE]]))]
+            text = f"the Jominy curve and the kinetics differ by {apart.max():.0f} HRC ({where}): the range is wide, try a coupon"
+            marks.append(mark("as_quenched", text))
     flash = number(row["flash_C"])
     if kind == "oil" and flash is None:
         marks.append(

@@ -7,6 +7,7 @@ from pycore.physics import critical, hardenability, martensite
 from pycore.physics.validity import outside, say
 from pycore.stages.notes import mark, note, rounded
 
+JOMINY_STATIONS = tuple(range(1, 33))
 GRAIN_SIZE_ASSUMED = 7.0  # what ASTM A255 assumes; fine-grained steel after a short soak is 7 to 9
 # Residuals of commercial bar where a certificate is silent (common practice): they matter for plain carbon steel.
 RESIDUALS_PCT = {"Cr": 0.08, "Ni": 0.08, "Mo": 0.02, "Cu": 0.12}
@@ -39,6 +40,7 @@ class Steel:
     Ms_C: float
     Mf_C: float
     DI_mm: float | None
+    jominy: dict | None  # calculated Jominy curve at 1 to 32 sixteenths of an inch
     austenitize_C: tuple  # low, usual, high
     temperatures: dict  # every tabulated quantity of the grade: (low, value, high, source)
     marks: tuple
@@ -143,6 +145,10 @@ def steel_of(job):
         DI_mm = float(hardenability.a255_ideal_diameter_in(austenite, grain)) * hardenability.INCH_MM
         if out:
             marks.append(mark("steel.DI_mm", "outside the range of ASTM A255: " + say(out)))
+    jominy = None
+    if DI_mm is not None and not outside({"C": austenite["C"]}, {"C": hardenability.JOMINY_C_RANGE}):
+        HRC = hardenability.a255_jominy_HRC(austenite, JOMINY_STATIONS, grain)
+        jominy = {"distance_mm": [rounded(J * 25.4 / 16, 2) for J in JOMINY_STATIONS], "HRC": [rounded(v) for v in HRC]}
     elements = ", ".join(f"{e} {composition[e]:g}" for e in sorted(composition, key=lambda e: (e != "C", e)))
     _notes(
         why, known, composition, elements, composition_note, grain, temperature, dissolved, hyper, bool(out), Ac3, Acm
@@ -165,6 +171,7 @@ def steel_of(job):
         rounded(Ms),
         rounded(Ms - martensite.STEVEN_HAYNES_MF_OFFSET_K),
         rounded(DI_mm),
+        jominy,
         (low, usual, high),
         known,
         tuple(marks),

@@ -101,9 +101,7 @@ def _prepare(job, steel, heat):
     advice = re.sub(r"If it was forged( or overheated)?, (\w)", lambda found: found[2].upper(), steel.prior)
     if condition == "forged" and steel.normalize == "yes" and "normalize_C" in steel.temperatures:
         top = steel.temperatures["normalize_C"][1]
-        listed.append(
-            _step("normalize", "Normalize", say.temperature(top), "even, then still air", advice, "heats")
-        )
+        listed.append(_step("normalize", "Normalize", say.temperature(top), "even, then still air", advice, "heats"))
     elif condition in ("forged", "hardened"):
         listed.append(
             _step(

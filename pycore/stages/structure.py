@@ -36,6 +36,7 @@ class Structure:
     soft_HV: np.ndarray  # mean hardness of what is neither martensite nor retained austenite
     rate_C_per_s: np.ndarray  # as the Jominy scale has it
     by: str  # which model gave the hardness
+    second_HRC: np.ndarray | None  # the kinetics' own opinion where the Jominy curve gave the hardness
 
 
 def jominy_rate_C_per_s(time_s, curves_C):
@@ -79,10 +80,11 @@ def structure_of(steel, time_s, curves_C, end_C, places, half_thickness_mm):
     HRC = hardness.HV_to_HRC(HV)
     by = "kinetics with additivity (Kirkaldy & Venugopalan 1984; Li 1998)"
     error = MODEL_ERROR_HRC + SOFT_ERROR_HRC * share_soft + STEEP_ERROR_HRC * 4 * (1 - share_soft) * share_soft
-    low, high = HRC - error, HRC + error
+    low, high, second = HRC - error, HRC + error, None
     if steel.DI_mm is not None and not outside({"C": C}, {"C": hardenability.JOMINY_C_RANGE}):
         by = "ASTM A255 Jominy equivalence; phases by kinetics, scaled to it"
-        HRC, low, high = _by_jominy(steel, rate, hardness.HV_to_HRC(softest_HV), HRC)
+        second = HRC
+        HRC, low, high = _by_jominy(steel, rate, hardness.HV_to_HRC(softest_HV), second)
         HV = hardness.HRC_to_HV(HRC)
         share_soft, soft = _scaled(steel, soft, share_soft, HRC, hardness.HV_to_HRC(softest_HV))
     hard = 1 - share_soft
@@ -91,7 +93,7 @@ def structure_of(steel, time_s, curves_C, end_C, places, half_thickness_mm):
     low = low - SKIN_ERROR_HRC_PER_MM * max(0.0, half_thickness_mm - SKIN_FROM_MM) * (np.asarray(places) >= SKIN_PLACES)
     ceiling = hardness.HV_to_HRC(hard_HV) + MODEL_ERROR_HRC / 2
     high = np.maximum(np.minimum(high, ceiling), HRC)
-    return Structure(HV, HRC, np.clip(low, 0.0, HRC), high, fractions, soft_HV, rate, by)
+    return Structure(HV, HRC, np.clip(low, 0.0, HRC), high, fractions, soft_HV, rate, by, second)
 
 
 def _by_jominy(steel, rate, floor_HRC, kinetics_HRC):
@@ -175,6 +177,7 @@ def tabulated_structure(steel, places, half_thickness_mm, hardens_mm):
         ones * hardness.HRC_to_HV(low),
         ones * np.nan,
         "tabulated for the grade",
+        None,
     )
 
 

@@ -279,3 +279,11 @@ def test_sulfur_ties_manganese_up():
 
     assert steel(0.28).austenite["Mn"] == pytest.approx(1.5 - 1.714 * 0.25, abs=0.005)
     assert steel(0.28).DI_mm < steel(0.02).DI_mm
+
+
+def test_jominy_curve_where_the_model_holds(plans):
+    """ASTM A255: 32 stations of 1/16 in (1.5875 mm), never harder further from the quenched end; none for W1."""
+    made = plan(dict(sample("punch"), steel={"grade": "4140"})).to_json()["steel"]["jominy"]
+    assert made["distance_mm"][0] == pytest.approx(1.59, abs=0.01) and made["distance_mm"][-1] == pytest.approx(50.8)
+    assert len(made["HRC"]) == 32 and made["HRC"] == sorted(made["HRC"], reverse=True)
+    assert plans["cold chisel"]["steel"]["jominy"] is None
