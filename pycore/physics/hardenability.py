@@ -122,3 +122,16 @@ def jominy_distance_sixteenths(rate_704_C_per_s):
     return np.exp(
         np.interp(np.log(np.maximum(rate_704_C_per_s, 1e-9)), np.log(np.array(rate)[order]), np.log(np.array(J)[order]))
     )
+
+
+def j1268_oil_surface_sixteenths(diameter_mm):
+    """The Jominy station that hardens like the surface of a round quenched in oil.
+
+    Inputs: diameter_mm of the round, > 0, scalar or array. Returns: 1/16 in, same shape.
+    Valid: rounds to 97 mm (3.8 in) in mildly agitated oil; a straight line from zero below 20 mm, held beyond the end.
+    Raises: nothing.
+    Source: SAE J1268 / ASTM A304, header of the hardenability charts (j1268_surface.csv, from memory). Conduction with
+        a bath's curve cools the skin of thick bars faster than this.
+    """
+    diameter, J = columns("j1268_surface", "diameter_in", "J_sixteenths")
+    return np.interp(np.asarray(diameter_mm, float) / INCH_MM, (0.0, *diameter), (0.0, *J))

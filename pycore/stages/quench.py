@@ -171,7 +171,9 @@ def quench(job, steel, section, heat, aim_HRC):
                 steel, len(PLACES), section.half_thickness_mm, _hardens_mm(steel, kind)
             )
         else:
-            found = structure.structure_of(steel, time_s, curves, ROOM_C, PLACES, section.half_thickness_mm)
+            found = structure.structure_of(
+                steel, time_s, curves, ROOM_C, PLACES, section.geometry, section.half_thickness_mm, kind
+            )
         risk = crack_risk(job, steel, section, bath.medium, kind)
         results.append((bath, row, time_s, curves, found, risk))
     chosen = _choose(job, steel, section, results, aim_HRC)

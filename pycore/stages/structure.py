@@ -19,6 +19,8 @@ SOFT_ERROR_HRC, STEEP_ERROR_HRC = 3.0, 5.0  # more where soft; most where half m
 JOMINY_DOUBT = 1.4  # factor on the Jominy distance: bath curves are known to ±30-50 %
 SECOND_OPINION = 0.5  # share of the kinetics' disagreement that goes into the band
 SKIN_ERROR_HRC_PER_MM, SKIN_FROM_MM, SKIN_PLACES = 0.25, 10.0, 0.8
+# The round that cools like a section in oil, over its thickness (equal first-mode decay, Bi about 1).
+ROUND_PER_SECTION = {"slab": 1.87, "cylinder": 1.0, "sphere": 0.69}
 MARTENSITE_SHARES = (0.5, 0.8, 0.9, 0.95, 0.999)  # columns of Hodge & Orehoski 1946
 UNKNOWN_PEARLITE_C = 620.0  # where pearlite is taken to form if the kinetics formed none (from memory)
 FERRITE_HV = 180.0  # ferrite in low-alloy steel (from memory)
@@ -55,7 +57,7 @@ def jominy_rate_C_per_s(time_s, curves_C):
     return np.array(rates)
 
 
-def structure_of(steel, time_s, curves_C, end_C, places, half_thickness_mm):
+def structure_of(steel, time_s, curves_C, end_C, places, geometry, half_thickness_mm, kind):
     """Structure along cooling curves (places, steps) of a modelled steel, cooled at last to end_C."""
     C, Ms = steel.austenite["C"], steel.Ms_C
     Ae3 = max(steel.Ac3_C or steel.Ac1_C, steel.Ac1_C + 1)
@@ -84,21 +86,30 @@ def structure_of(steel, time_s, curves_C, end_C, places, half_thickness_mm):
     if steel.DI_mm is not None and not outside({"C": C}, {"C": hardenability.JOMINY_C_RANGE}):
         by = "ASTM A255 Jominy equivalence; phases by kinetics, scaled to it"
         second = HRC
-        HRC, low, high = _by_jominy(steel, rate, hardness.HV_to_HRC(softest_HV), second)
+        J = hardenability.jominy_distance_sixteenths(rate)
+        if kind == "oil":
+            J = np.maximum(J, _skin_station(places, geometry, half_thickness_mm))
+        HRC, low, high = _by_jominy(steel, J, hardness.HV_to_HRC(softest_HV), second)
         HV = hardness.HRC_to_HV(HRC)
         share_soft, soft = _scaled(steel, soft, share_soft, HRC, hardness.HV_to_HRC(softest_HV))
     hard = 1 - share_soft
     fractions = {**soft, "martensite": hard * (1 - retained), "retained_austenite": hard * retained}
-    # Published bars are softer at the skin the thicker they are; conduction with a bath's curve does not show it.
+    # Published bars are softer at the skin the thicker they are; the models do not show all of it.
     low = low - SKIN_ERROR_HRC_PER_MM * max(0.0, half_thickness_mm - SKIN_FROM_MM) * (np.asarray(places) >= SKIN_PLACES)
     ceiling = hardness.HV_to_HRC(hard_HV) + MODEL_ERROR_HRC / 2
     high = np.maximum(np.minimum(high, ceiling), HRC)
     return Structure(HV, HRC, np.clip(low, 0.0, HRC), high, fractions, soft_HV, rate, by, second)
 
 
-def _by_jominy(steel, rate, floor_HRC, kinetics_HRC):
+def _skin_station(places, geometry, half_thickness_mm):
+    """Jominy stations below which the skin of a part in oil does not go, by the published chart, fading inwards."""
+    round_mm = 2 * half_thickness_mm * ROUND_PER_SECTION[geometry]
+    inwards = np.clip((np.asarray(places) - SKIN_PLACES) / (1 - SKIN_PLACES), 0.0, 1.0)
+    return inwards * float(hardenability.j1268_oil_surface_sixteenths(round_mm))
+
+
+def _by_jominy(steel, J, floor_HRC, kinetics_HRC):
     """(mid, low, high) HRC by the Jominy curve, with the bath's doubt and the second opinion of the kinetics in the band."""
-    J = hardenability.jominy_distance_sixteenths(rate)
     # The dividing factors run on below the softest structure the steel can have at that rate: it is the floor.
     at = lambda distance: np.maximum(  # noqa: E731
         hardenability.a255_jominy_HRC(steel.austenite, distance, steel.grain_size), floor_HRC

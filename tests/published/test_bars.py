@@ -104,12 +104,18 @@ def test_bars_by_size(row):
 
 
 def test_bars_by_size_all_together():
-    """Bethlehem, 198 values of 18 bars: mean error under 6.3 HRC (reached 5.7), and 2.5 HRC over the steels and sizes that a
+    """Bethlehem, 198 values of 18 bars: mean error under 5.8 HRC (reached 5.3), and 2.5 HRC over the steels and sizes that a
     small shop hardens through: alloy steel to 25 mm."""
     everything = np.concatenate([bar_errors(steel, medium)[0] for steel, medium, _ in CEILINGS])
-    assert len(everything) == 198 and abs(everything).mean() <= 6.3
+    assert len(everything) == 198 and abs(everything).mean() <= 5.8
     small = np.concatenate([bar_errors(steel, medium)[0][:6] for steel, medium, _ in CEILINGS if steel in ALLOY])
     assert abs(small).mean() <= 2.5
+
+
+def test_bands_hold_the_bars():
+    """Bethlehem, the same 198 values: seven in ten lie inside the 10-90 % band that was told, half a point allowed."""
+    inside = np.concatenate([bar_errors(steel, medium)[1] for steel, medium, _ in CEILINGS])
+    assert 0.68 <= inside.mean() <= 0.95
 
 
 # SAE J1268 / ASTM A304 chart header: round (in) whose place hardens as a Jominy station, mild agitation (from memory).

@@ -125,3 +125,10 @@ def test_jominy_distance(J, rate):
 def test_jominy_rates_fall_all_along():
     rates = np.geomspace(2.0, 270.0, 60)
     assert (np.diff(hardenability.jominy_distance_sixteenths(rates)) < 0).all()
+
+
+@pytest.mark.parametrize("diameter_in, station", [(0.8, 2), (1.8, 4), (2.5, 6), (3.0, 8), (3.8, 12)],
+                         ids=lambda v: f"SAE J1268 chart header, {v}")  # fmt: skip
+def test_surface_of_rounds_in_oil(diameter_in, station):
+    """SAE J1268 / ASTM A304, header of the charts, mildly agitated oil, surface (from memory)."""
+    assert float(hardenability.j1268_oil_surface_sixteenths(diameter_in * 25.4)) == pytest.approx(station, abs=0.01)
