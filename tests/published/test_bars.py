@@ -18,7 +18,7 @@ from pycore.stages.structure import jominy_rate_C_per_s
 DATA = pathlib.Path(__file__).parent / "data"
 W_HEATS = tuple(csv.DictReader(open(DATA / "w_heats.csv", encoding="utf-8", newline="")))  # noqa: SIM115
 BARS = tuple(csv.DictReader(open(DATA / "bars_by_size.csv", encoding="utf-8", newline="")))  # noqa: SIM115
-ELEMENTS = ("C", "Mn", "Si", "Ni", "Cr", "Mo", "V")
+ELEMENTS = ("C", "Mn", "Si", "Ni", "Cr", "Mo", "V", "S")
 # The handbook's agitated baths, in the house's media.
 BATHS = {"oil": ("medium-oil", "moderate"), "water": ("water", "moderate"), "brine": ("brine", "moderate")}
 
@@ -90,9 +90,9 @@ ALLOY = ("4130", "4140", "4340", "5140", "5160", "6150", "8740")
 # Bethlehem Steel, Modern Steels and Their Properties, rounds of 12.7 to 102 mm: steel, bath, ceiling of the mean error.
 CEILINGS = [
     ("1030", "water", 9.3), ("1040", "oil", 6.9), ("1040", "water", 6.6), ("1050", "water", 7.7), ("1060", "oil", 3.9),
-    ("1080", "oil", 7.5), ("1095", "oil", 5.8), ("1095", "water", 8.3), ("1141", "oil", 7.5), ("1144", "oil", 17.5),
-    ("1340", "oil", 6.7), ("4130", "water", 1.7), ("4140", "oil", 6.8), ("4340", "oil", 1.4), ("5140", "oil", 4.7),
-    ("5160", "oil", 4.1), ("6150", "oil", 7.3), ("8740", "oil", 3.2),
+    ("1080", "oil", 7.5), ("1095", "oil", 5.8), ("1095", "water", 8.3), ("1141", "oil", 5.0), ("1144", "oil", 9.5),
+    ("1340", "oil", 5.8), ("4130", "water", 1.7), ("4140", "oil", 6.2), ("4340", "oil", 1.4), ("5140", "oil", 4.5),
+    ("5160", "oil", 2.7), ("6150", "oil", 6.7), ("8740", "oil", 2.4),
 ]  # fmt: skip
 
 
@@ -104,18 +104,18 @@ def test_bars_by_size(row):
 
 
 def test_bars_by_size_all_together():
-    """Bethlehem, 198 values of 18 bars: mean error under 5.8 HRC (reached 5.3), and 2.5 HRC over the steels and sizes that a
+    """Bethlehem, 198 values of 18 bars: mean error under 5.4 HRC (reached 4.9), and 2.5 HRC over the steels and sizes that a
     small shop hardens through: alloy steel to 25 mm."""
     everything = np.concatenate([bar_errors(steel, medium)[0] for steel, medium, _ in CEILINGS])
-    assert len(everything) == 198 and abs(everything).mean() <= 5.8
+    assert len(everything) == 198 and abs(everything).mean() <= 5.4
     small = np.concatenate([bar_errors(steel, medium)[0][:6] for steel, medium, _ in CEILINGS if steel in ALLOY])
     assert abs(small).mean() <= 2.5
 
 
 def test_bands_hold_the_bars():
-    """Bethlehem, the same 198 values: seven in ten lie inside the 10-90 % band that was told, half a point allowed."""
+    """Bethlehem, the same 198 values: three in four lie inside the 10-90 % band that was told, half a point allowed."""
     inside = np.concatenate([bar_errors(steel, medium)[1] for steel, medium, _ in CEILINGS])
-    assert 0.68 <= inside.mean() <= 0.95
+    assert 0.70 <= inside.mean() <= 0.95
 
 
 # SAE J1268 / ASTM A304 chart header: round (in) whose place hardens as a Jominy station, mild agitation (from memory).
