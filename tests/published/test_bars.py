@@ -27,7 +27,7 @@ def quenched(row, medium, diameter_mm, austenitize_C, grain_size):
     """Plan of a bar with a certificate's chemistry; elements the source does not give take the program's residuals."""
     bath, agitation = BATHS[medium]
     return plan({
-        "steel": {"chemistry": {e: float(row[e]) for e in ELEMENTS if row[e]}, "grain_size": grain_size},
+        "steel": {"chemistry": {e: float(row[e]) for e in ELEMENTS if row.get(e)}, "grain_size": grain_size},
         "part": {"shape": "round", "dimensions_mm": {"diameter": diameter_mm, "length": 6 * diameter_mm}, "condition": "normalized"},
         "aim": {"hardness_HRC": [20, 68]},
         "shop": {
