@@ -9,8 +9,9 @@ from pycore.stages.notes import mark, note, rounded
 
 JOMINY_STATIONS = tuple(range(1, 33))
 GRAIN_SIZE_ASSUMED = 7.0  # what ASTM A255 assumes; fine-grained steel after a short soak is 7 to 9
-# Residuals of commercial bar where a certificate is silent (common practice): they matter for plain carbon steel.
-RESIDUALS_PCT = {"Cr": 0.08, "Ni": 0.08, "Mo": 0.02, "Cu": 0.12}
+# Residuals of commercial bar where a certificate is silent (common practice): they matter for plain carbon steel. Bars
+# by size ask for less (down to none), hardenability bands for twice this; between the two.
+RESIDUALS_PCT = {"Cr": 0.05, "Ni": 0.05, "Mo": 0.01, "Cu": 0.07}
 SILENT_PCT = {"Mn": 0.60, "Si": 0.22}
 # Carbon dissolved after a short soak: a share of the Fe-C solubility, less what chromium holds in carbide. Our own
 # estimate, set on retained austenite of 52100 quenched from 816-871 °C and on 1095 at 800 °C (0.80-0.90 %).

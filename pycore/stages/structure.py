@@ -13,7 +13,7 @@ RATE_CHECK_C = 704.0  # 1300 °F, where the Jominy scale is told
 RATE_END_C = 500.0
 FASTEST_TOLD_C_PER_S = 1000.0  # far beyond the scale's 272 °C/s at J 1; a wetted skin has no rate worth telling
 SEMI_INFINITE_RATIO = 0.622  # mean rate 704-500 °C over rate at 704 °C, erf solution of the end-quenched bar
-# Width of the bands, set once: three in four of the published bars by size lie inside (tests/published/test_bars.py).
+# Width of the bands, set once: nearly eight in ten of the published bars by size lie inside (tests/published/test_bars.py).
 MODEL_ERROR_HRC = 2.0  # fully hardened: scatter of as-quenched tables about Hodge & Orehoski
 SOFT_ERROR_HRC, STEEP_ERROR_HRC = 3.0, 5.0  # more where soft; most where half martensite, steep in the rate
 JOMINY_DOUBT = 1.4  # factor on the Jominy distance: bath curves are known to ±30-50 %

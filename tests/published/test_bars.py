@@ -89,10 +89,10 @@ def bar_errors(steel, medium):
 ALLOY = ("4130", "4140", "4340", "5140", "5160", "6150", "8740")
 # Bethlehem Steel, Modern Steels and Their Properties, rounds of 12.7 to 102 mm: steel, bath, ceiling of the mean error.
 CEILINGS = [
-    ("1030", "water", 9.3), ("1040", "oil", 6.9), ("1040", "water", 6.6), ("1050", "water", 7.7), ("1060", "oil", 3.9),
-    ("1080", "oil", 7.5), ("1095", "oil", 5.8), ("1095", "water", 8.3), ("1141", "oil", 5.0), ("1144", "oil", 9.5),
+    ("1030", "water", 9.3), ("1040", "oil", 4.6), ("1040", "water", 5.8), ("1050", "water", 7.7), ("1060", "oil", 3.9),
+    ("1080", "oil", 5.9), ("1095", "oil", 5.1), ("1095", "water", 7.4), ("1141", "oil", 3.5), ("1144", "oil", 7.3),
     ("1340", "oil", 5.8), ("4130", "water", 1.7), ("4140", "oil", 6.2), ("4340", "oil", 1.4), ("5140", "oil", 4.5),
-    ("5160", "oil", 2.7), ("6150", "oil", 6.7), ("8740", "oil", 2.4),
+    ("5160", "oil", 2.7), ("6150", "oil", 6.7), ("8740", "oil", 2.0),
 ]  # fmt: skip
 
 
@@ -104,16 +104,16 @@ def test_bars_by_size(row):
 
 
 def test_bars_by_size_all_together():
-    """Bethlehem, 198 values of 18 bars: mean error under 5.4 HRC (reached 4.9), and 2.5 HRC over the steels and sizes that a
+    """Bethlehem, 198 values of 18 bars: mean error under 4.9 HRC (reached 4.4), and 2.5 HRC over the steels and sizes that a
     small shop hardens through: alloy steel to 25 mm."""
     everything = np.concatenate([bar_errors(steel, medium)[0] for steel, medium, _ in CEILINGS])
-    assert len(everything) == 198 and abs(everything).mean() <= 5.4
+    assert len(everything) == 198 and abs(everything).mean() <= 4.9
     small = np.concatenate([bar_errors(steel, medium)[0][:6] for steel, medium, _ in CEILINGS if steel in ALLOY])
     assert abs(small).mean() <= 2.5
 
 
 def test_bands_hold_the_bars():
-    """Bethlehem, the same 198 values: three in four lie inside the 10-90 % band that was told, half a point allowed."""
+    """Bethlehem, the same 198 values: nearly eight in ten lie inside the 10-90 % band that was told, half a point allowed."""
     inside = np.concatenate([bar_errors(steel, medium)[1] for steel, medium, _ in CEILINGS])
     assert 0.70 <= inside.mean() <= 0.95
 
@@ -203,8 +203,8 @@ def test_O1_hardens_through_50_mm_in_oil():
     assert centre(50) >= 61 and centre(100) < 58
 
 
-def test_1040_of_50_mm_in_water_is_told_too_soft():
-    """Callister, Introduction, fig. 11.19: 1040, 50 mm round, mildly agitated water, about 28 HRC in the centre. Reached: 21, as
-    A255 reads plain carbon steel low past the first stations. A ceiling."""
+def test_1040_of_50_mm_in_water_between_two_sources():
+    """Callister, Introduction, fig. 11.19: 1040, 50 mm round, mildly agitated water, about 28 HRC in the centre; Bethlehem's
+    1040 bar of half that size reads 18 there. The sources disagree; reached: 20, nearer the measured bar."""
     row = {"C": "0.40", "Mn": "0.75", "Si": "0.22", "Ni": "", "Cr": "", "Mo": "", "V": ""}
-    assert quenched(row, "water", 50, 845, 7)["centre"]["HRC"]["mid"] == pytest.approx(28, abs=8)
+    assert quenched(row, "water", 50, 845, 7)["centre"]["HRC"]["mid"] == pytest.approx((28 + 18) / 2, abs=5)
