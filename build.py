@@ -4,6 +4,7 @@
     python3 build.py                  the page and the demo's sheet, in dist/
     python3 build.py test [PYTEST…]   the same, then every test; PYTEST… goes to pytest (-k bath)
     python3 build.py bench            the same, then the table of budgets
+    python3 build.py truth            the same, then where the models stand against published figures
     python3 build.py picture          the same, then web/demo-sheet.png, the README's picture
 
     --wheels DIR   take wheels from this folder before asking the network
@@ -261,7 +262,7 @@ def closure(frozen: dict, root: str) -> dict:
 
 def main() -> int:
     parser = argparse.ArgumentParser(description=__doc__, formatter_class=argparse.RawDescriptionHelpFormatter)
-    parser.add_argument("command", nargs="?", default="build", choices=["build", "test", "bench", "picture"])
+    parser.add_argument("command", nargs="?", default="build", choices=["build", "test", "bench", "truth", "picture"])
     parser.add_argument("--wheels", type=Path, metavar="DIR")
     options, rest = parser.parse_known_args()
     if rest and options.command != "test":

@@ -1,4 +1,4 @@
-"""What build.py does after a build: test, bench, picture."""
+"""What build.py does after a build: test, bench, truth, picture."""
 
 from __future__ import annotations
 
@@ -35,6 +35,11 @@ def bench(build, rest: list[str]) -> int:
     page = CACHE / "work" / "plain.html"
     plain.make(build, page)
     return _python(HERE / "bench.py", page, chromium)
+
+
+def truth(build, rest: list[str]) -> int:
+    """The models' errors against published figures, one by one."""
+    return _python(ROOT / "tests" / "published" / "truth.py", env={**os.environ, "PYTHONPATH": str(ROOT)})
 
 
 def picture(build, rest: list[str]) -> int:
