@@ -5,6 +5,7 @@ from dataclasses import dataclass
 
 from pycore.stages.notes import note, rounded
 from pycore.stages.quench import CENTRE, SURFACE
+from pycore.stages.risk import MEANT_FOR, gentleness
 
 REACHABLE_SHARE, BORDERLINE_SHARE = 0.55, 0.20
 TENTH_TO_SPREAD = 2.56  # a 10-90 % band is 2.56 standard deviations wide
@@ -79,6 +80,7 @@ def proof(job, steel, section, heat, quenched, found, temper, aim_HRC):
     if quenched.crack_risk["grade"] == "high":
         reasons.append("High risk of cracking: " + "; ".join(quenched.crack_risk["reasons"]) + ".")
         verdict = "borderline" if verdict == "reachable" else verdict
+        _gentler(job, steel, quenched, alternatives)
     if heat.measured_by != "pyrometer":
         window = heat.window_C[1] - heat.window_C[0]
         if heat.error_C * 2 > window + 20:
@@ -96,6 +98,17 @@ def proof(job, steel, section, heat, quenched, found, temper, aim_HRC):
         )
     }
     return Proof(verdict, rounded(confidence, 2), tuple(reasons), tuple(alternatives), why)
+
+
+def _gentler(job, steel, quenched, alternatives):
+    """What would lower the risk of cracking: the medium the grade is meant for, eased features."""
+    if MEANT_FOR[steel.hardening] > gentleness(quenched.kind):
+        medium = "still air" if steel.hardening == "air" else "oil"
+        alternatives.append({"what": f"Quench in {medium}: the grade is meant for it.", "gives": "a much lower risk of cracking"})
+    if job.part.features:
+        alternatives.append(
+            {"what": "Round the corners, plug the holes, fill the keyways.", "gives": "fewer places where a crack starts"}
+        )
 
 
 def _harder(job, steel, quenched, alternatives):

@@ -287,3 +287,11 @@ def test_jominy_curve_where_the_model_holds(plans):
     assert made["distance_mm"][0] == pytest.approx(1.59, abs=0.01) and made["distance_mm"][-1] == pytest.approx(50.8)
     assert len(made["HRC"]) == 32 and made["HRC"] == sorted(made["HRC"], reverse=True)
     assert plans["cold chisel"]["steel"]["jominy"] is None
+
+
+def test_a_quench_that_may_crack_it_says_what_would_be_gentler():
+    job = dict(sample("cold chisel"), steel={"grade": "O1"})
+    job["part"] = dict(job["part"], features=["sharp-corner"])
+    made = plan(job).to_json()
+    assert made["quench"]["crack_risk"]["grade"] == "high" and made["verdict"] != "reachable"
+    assert any("oil" in one["what"] for one in made["alternatives"])
