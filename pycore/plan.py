@@ -147,7 +147,7 @@ def _to_json(plan, date):
         "quench": _fields(
             quenched,
             "medium medium_name kind bath_C bath_window_C agitation bath_rise_C volume_L volume_needed_L transfer_s "
-            "bath_entry_C out_of_bath_C time_in_bath_s rate_704_C_per_s flash_C crack_risk others",
+            "bath_entry_C out_of_bath_C time_in_bath_s rate_704_C_per_s flash_C crack_risk size_change_pct others",
         ),
         "as_quenched": {
             name: place_json(quenched.structure, i)

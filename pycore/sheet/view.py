@@ -171,6 +171,8 @@ def facts_of(plan, reader):
         told = "out" in steps
         fact("out at", reader.temperature("quench.out_of_bath_C"), spare=told)
         fact("after", reader.shown("quench.time_in_bath_s", seconds(quench.get("time_in_bath_s"))), spare=told)
+        if is_number(quench.get("size_change_pct")):
+            fact("grows", reader.shown("quench.size_change_pct", f"{number(quench['size_change_pct'], 2)} %"), spare=True)
     if austenitize:
         fact("Scale", reader.length("austenitize.scale_mm"), spare=True)
         fact("carbon lost", reader.length("austenitize.decarb_mm") + escape(" deep"))

@@ -104,10 +104,15 @@ def _gentler(job, steel, quenched, alternatives):
     """What would lower the risk of cracking: the medium the grade is meant for, eased features."""
     if MEANT_FOR[steel.hardening] > gentleness(quenched.kind):
         medium = "still air" if steel.hardening == "air" else "oil"
-        alternatives.append({"what": f"Quench in {medium}: the grade is meant for it.", "gives": "a much lower risk of cracking"})
+        alternatives.append(
+            {"what": f"Quench in {medium}: the grade is meant for it.", "gives": "a much lower risk of cracking"}
+        )
     if job.part.features:
         alternatives.append(
-            {"what": "Round the corners, plug the holes, fill the keyways.", "gives": "fewer places where a crack starts"}
+            {
+                "what": "Round the corners, plug the holes, fill the keyways.",
+                "gives": "fewer places where a crack starts",
+            }
         )
 
 

@@ -1,4 +1,6 @@
-"""Risk of cracking and warping, graded by points with its reasons (common practice, no model)."""
+"""Risk of cracking and warping, graded by points with its reasons (common practice; the steel's part by Kunitake)."""
+
+from pycore.physics.size_change import CRACKS_ABOVE_CEQ, kunitake_carbon_equivalent
 
 MEDIUM_POINTS = {"brine": 4.0, "water": 3.0, "fast-oil": 1.5, "medium-oil": 1.0, "canola": 1.0, "plates": 0.5}
 FEATURE_POINTS = {"sharp-corner": 2.0, "keyway": 2.0, "hole": 1.0, "section-step": 1.0, "thread": 1.0}
@@ -27,6 +29,10 @@ def crack_risk(job, steel, section, medium, kind):
     elif steel.Ms_C < 270 and kind == "water":
         points += 1.0
         reasons.append(f"martensite forms below 270 °C (Ms {steel.Ms_C:.0f} °C)")
+    equivalent = float(kunitake_carbon_equivalent(steel.composition))
+    if kind == "water" and equivalent > CRACKS_ABOVE_CEQ:
+        points += min(1.5, 2 * (equivalent - CRACKS_ABOVE_CEQ))
+        reasons.append(f"carbon equivalent {equivalent:.2f} %, cracks are likely in water above {CRACKS_ABOVE_CEQ:g} %")
     for feature in job.part.features:
         points += FEATURE_POINTS[feature]
         reasons.append(
