@@ -141,7 +141,7 @@ def _to_json(plan, date):
         },
         "austenitize": _fields(
             heat,
-            "temperature_C window_C preheat heat_up_min soak_min soak_max_min total_min scale_mm decarb_mm "
+            "temperature_C window_C preheat heat_up_min soak_min soak_max_min total_min thin_at_heat_min scale_mm decarb_mm "
             "stock_mm colour magnet_lets_go_C measured_by error_C",
         ),
         "quench": _fields(

@@ -16,6 +16,7 @@ LONGEST_HEAT_S = 6 * 3600.0
 SCALE_STARTS_C = 700.0  # lower end of the parabolic law's range
 METAL_PER_SCALE = 0.5  # iron lost per thickness of scale; Pilling-Bedworth ratio about 1.7-2
 COLOUR_ERROR_C = 40.0  # judging by shade and magnet: ±30-50 °C (common practice)
+THIN_AND_THICK = 1.5  # from this ratio the thin section is looked at by itself
 PREHEAT_HOLD_MIN = 10.0  # common practice: until even, at least 10 minutes
 SOAK_BY_FAMILY = {"hypo": (5.0, 10.0, 30.0), "hyper": (5.0, 10.0, 20.0)}  # common practice where no sheet exists
 
@@ -29,6 +30,7 @@ class Austenitize:
     soak_min: float
     soak_max_min: float
     total_min: float
+    thin_at_heat_min: float | None  # the thinnest section, where it is much thinner than the rest
     scale_mm: float
     decarb_mm: float
     stock_mm: float
@@ -48,8 +50,8 @@ def atmosphere_row(kind):
     return next(row for row in table("atmospheres") if row["id"] == kind)
 
 
-def heat_up(section, job, target_C, start_C=ROOM_C):
-    """History of the section in its fire until the centre is within EVEN_WITHIN_K of the target."""
+def heat_up(geometry, half_thickness_mm, job, target_C):
+    """History of a section in its fire until the centre is within EVEN_WITHIN_K of the target."""
     fire, air = furnace_row(job.heat.kind), atmosphere_row(job.heat.atmosphere)
     convection = number(fire["convection_W_m2K"])
     emissivity = number(fire["emissivity_to_part"]) if job.heat.atmosphere == "air" else number(air["emissivity"])
@@ -60,10 +62,10 @@ def heat_up(section, job, target_C, start_C=ROOM_C):
         return convection + radiation_coefficient(surface_C, around, emissivity), around
 
     return conduction.conduct(
-        section.geometry,
-        section.half_thickness_mm,
+        geometry,
+        half_thickness_mm,
         steel_properties.on_heating(),
-        start_C,
+        ROOM_C,
         boundary,
         until=lambda T: T[:, 0] >= target_C - EVEN_WITHIN_K,
         end_s=LONGEST_HEAT_S,
@@ -80,7 +82,9 @@ def austenitize(job, steel, section):
     if decided and not low <= target <= high:
         marks.append(
             mark(
-                "austenitize.temperature_C", f"decided {target:g} °C is outside the published range {low:g}-{high:g} °C"
+                "austenitize.temperature_C",
+                f"decided {target:g} °C is outside the published range {low:g}-{high:g} °C: "
+                + ("the grain grows" if target > high else "too little carbon dissolves"),
             )
         )
     fire = furnace_row(job.heat.kind)
@@ -89,7 +93,7 @@ def austenitize(job, steel, section):
         error = job.heat.accuracy_C if job.heat.accuracy_C is not None else number(fire["accuracy_default_C"])
     else:
         measured_by, error = "colour and magnet", max(job.heat.accuracy_C or 0.0, COLOUR_ERROR_C)
-    history = heat_up(section, job, target)
+    history = heat_up(section.geometry, section.half_thickness_mm, job, target)
     time_s, temperature = history.case()
     heat_up_min = float(time_s[-1]) / 60.0
     if temperature[-1, 0] < target - EVEN_WITHIN_K - 1:
@@ -102,6 +106,15 @@ def austenitize(job, steel, section):
     )
     soak_min = soak[1] if job.heat.pyrometer else soak[0]
     soak_max = soak[2]
+    thin_at_heat_min = _thin_at_heat_min(job, section, target, heat_up_min + soak_min)
+    if thin_at_heat_min is not None and thin_at_heat_min > soak_max:
+        marks.append(
+            mark(
+                "austenitize.soak_min",
+                f"the {section.thinnest_mm:g} mm part is at heat for about {thin_at_heat_min:.0f} min by then, over the "
+                f"{soak_max:g} min the grade stands: shield it, or put it in last",
+            )
+        )
     hot = float(np.trapezoid(temperature[:, -1] > SCALE_STARTS_C, time_s)) / 60.0 + soak_min
     air = atmosphere_row(job.heat.atmosphere)
     scale = float(surface_loss.paidassi_scale_mm(target, hot)) * number(air["scale_factor"])
@@ -121,6 +134,7 @@ def austenitize(job, steel, section):
         rounded(soak_min),
         rounded(soak_max),
         rounded(total),
+        rounded(thin_at_heat_min),
         rounded(scale, 3),
         rounded(decarb, 2),
         rounded(stock, 2),
@@ -131,6 +145,14 @@ def austenitize(job, steel, section):
         tuple(marks),
         why,
     )
+
+
+def _thin_at_heat_min(job, section, target_C, whole_min):
+    """How long the thinnest section stands at heat while the thickest comes through; None where they hardly differ."""
+    if section.thinnest_mm * THIN_AND_THICK > section.width_mm:
+        return None
+    time_s, _ = heat_up("slab", section.thinnest_mm / 2, job, target_C).case()
+    return max(0.0, whole_min - float(time_s[-1]) / 60.0)
 
 
 def _preheats(job, steel):

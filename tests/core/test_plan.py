@@ -295,3 +295,11 @@ def test_a_quench_that_may_crack_it_says_what_would_be_gentler():
     made = plan(job).to_json()
     assert made["quench"]["crack_risk"]["grade"] == "high" and made["verdict"] != "reachable"
     assert any("oil" in one["what"] for one in made["alternatives"])
+
+
+def test_a_thin_edge_is_at_heat_longer_than_the_thick_back():
+    job = dict(sample("cold chisel"), steel={"grade": "1095"})
+    job["part"] = {"shape": "wedge", "dimensions_mm": {"edge": 1, "spine": 12, "width": 50, "length": 200}, "zone": "all"}
+    heat = plan(job).to_json()["austenitize"]
+    assert heat["soak_min"] < heat["thin_at_heat_min"] < heat["heat_up_min"] + heat["soak_min"]
+    assert plan(sample("cold chisel")).to_json()["austenitize"]["thin_at_heat_min"] is None
