@@ -74,6 +74,18 @@ def proof(job, steel, section, heat, quenched, found, temper, aim_HRC):
         )
         if verdict != "reachable":
             _narrow(job, heat, temper, final, aim_HRC, reasons, alternatives)
+    if temper.beyond_sheet:
+        verdict = "borderline" if verdict == "reachable" else verdict
+        low_C, _, high_C, source = steel.temperatures["temper_C"]
+        reasons.append(
+            f"The grade's sheet tempers at {low_C:g}–{high_C:g} °C, not at {temper.temperature_C:g} °C: {source}."
+        )
+        alternatives.append(
+            {
+                "what": "Change the aim to what that range gives, or take another steel.",
+                "gives": "the toughness the grade is known for",
+            }
+        )
     centre = float(found.HRC[CENTRE])
     if centre < low and surface >= low:
         reasons.append(f"The centre hardens to about {centre:.0f} HRC only: a hard shell over a softer core.")

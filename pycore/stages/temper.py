@@ -36,6 +36,7 @@ class Temper:
     colour: str | None
     start_within_min: int
     reached: bool
+    beyond_sheet: bool  # outside the tempering range the grade's own sheet gives
     needs_C: float | None
     longer_h: float | None  # hold in hours that would reach the aim at the oven's hottest, if one does
     accuracy_C: float
@@ -105,6 +106,8 @@ def _hold(job, steel, section):
     tool = "tool steel" in steel.family and steel.hardening != "water"
     hold = max(120.0 if tool else 60.0, 15 * math.ceil(HOLD_PER_MM_MIN * section.width_mm / 15))
     cycles = 2 if steel.basis == "tabulated" or steel.dissolved_C_pct >= 0.6 else 1
+    if "temper_cycles" in steel.temperatures:
+        cycles = int(steel.temperatures["temper_cycles"][1])
     return hold, cycles
 
 
@@ -146,7 +149,8 @@ def temper(job, steel, section, quenched, found, aim_HRC):
             if not reached:
                 longer = _longer(response, found, hottest, high, cycles)
     chosen = max(chosen, min(LOWEST_C, hottest)) if "temper_C" not in job.decided else chosen
-    if published and not published[0] <= chosen <= published[2]:
+    beyond_sheet = bool(published) and not published[0] <= chosen <= published[2]
+    if beyond_sheet:
         marks.append(
             mark(
                 "temper.temperature_C",
@@ -185,6 +189,7 @@ def temper(job, steel, section, quenched, found, aim_HRC):
         colours.temper_colour(chosen, steel_set),
         start,
         reached,
+        beyond_sheet,
         rounded(needs, 0) if not reached else None,
         longer,
         rounded(accuracy),

@@ -18,6 +18,7 @@ QUANTITIES = {
     "Ac1_C", "Ac3_C", "Acm_C", "Ms_C", "austenitize_C", "normalize_C", "preheat_C", "preheat2_C", "soak_min",
     "as_quenched_HRC", "dissolved_C_pct", "retained_austenite_pct", "air_hardening_mm", "oil_hardening_mm",
     "temper_C",
+    "temper_cycles",
 }
 STEPS = {
     "ready", "stock", "normalize", "preheat", "austenitize", "soak", "transfer", "quench", "out", "check", "cold",

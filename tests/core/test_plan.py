@@ -303,3 +303,13 @@ def test_a_thin_edge_is_at_heat_longer_than_the_thick_back():
     heat = plan(job).to_json()["austenitize"]
     assert heat["soak_min"] < heat["thin_at_heat_min"] < heat["heat_up_min"] + heat["soak_min"]
     assert plan(sample("cold chisel")).to_json()["austenitize"]["thin_at_heat_min"] is None
+
+
+def test_tempers_of_high_alloy_steel_follow_the_sheet():
+    """M2 three tempers past its peak (ASM practice, triple at a high hardening heat); 440C not in 425-595 °C unasked."""
+    shop = dict(sample("punch")["shop"], heat={"kind": "kiln", "max_C": 1250}, baths=[{"medium": "still-air"}],
+                temper={"kind": "kiln", "max_C": 650})  # fmt: skip
+    high_speed = plan(dict(sample("punch"), steel={"grade": "M2"}, aim={"hardness_HRC": [62, 64]}, shop=shop)).to_json()
+    assert high_speed["temper"]["cycles"] == 3 and high_speed["temper"]["temperature_C"] >= 540
+    stainless = plan(dict(sample("punch"), steel={"grade": "440C"}, aim={"hardness_HRC": [51, 53]}, shop=shop)).to_json()
+    assert stainless["verdict"] != "reachable" and any("sheet" in reason for reason in stainless["reasons"])
