@@ -3,6 +3,7 @@
 import numpy as np
 
 from pycore.data import columns
+from pycore.physics.composition import amounts
 
 ANDREWS_RANGE = {
     "C": (0.0, 0.6),
@@ -16,10 +17,6 @@ EUTECTOID_C_PCT = 0.76  # Gustafson 1985 assessment: 0.761 % at 727 °C
 EUTECTOID_TEMPERATURE_C = 727.0
 
 
-def _get(composition, element):
-    return np.asarray(composition.get(element, 0.0), float)
-
-
 def andrews_1965_Ac1_C(composition):
     """Ac1, where austenite begins to form on heating.
 
@@ -28,7 +25,7 @@ def andrews_1965_Ac1_C(composition):
     Valid: ANDREWS_RANGE (low-alloy steel); standard error about 11.5 °C. Raises: nothing.
     Source: Andrews 1965, JISI 203, 721-727.
     """
-    g = lambda e: _get(composition, e)  # noqa: E731
+    g = amounts(composition)
     return 723 - 10.7 * g("Mn") - 16.9 * g("Ni") + 29.1 * g("Si") + 16.9 * g("Cr") + 290 * g("As") + 6.38 * g("W")
 
 
@@ -40,7 +37,7 @@ def andrews_1965_Ac3_C(composition):
     Valid: ANDREWS_RANGE, hypoeutectoid steel; standard error about 16.7 °C. Raises: nothing.
     Source: Andrews 1965, JISI 203, 721-727; the short form needs no P and Al analysis.
     """
-    g = lambda e: _get(composition, e)  # noqa: E731
+    g = amounts(composition)
     return 910 - 203 * np.sqrt(g("C")) - 15.2 * g("Ni") + 44.7 * g("Si") + 104 * g("V") + 31.5 * g("Mo") + 13.1 * g("W")
 
 

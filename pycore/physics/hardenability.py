@@ -3,6 +3,7 @@
 import numpy as np
 
 from pycore.data import columns, number, table
+from pycore.physics.composition import amounts
 
 INCH_MM = 25.4
 A255_RANGE = {
@@ -17,7 +18,7 @@ A255_RANGE = {
 }  # ASTM A255-10, section 1.3
 JOMINY_C_RANGE = (0.10, 0.65)
 LAST_CUTOFF_J = 14.0
-UNUSED_ABOVE_DI_IN = {24.0: 6.0}   # this row, as remembered, turns up again there and would soften deep-hardening steel
+UNUSED_ABOVE_DI_IN = {24.0: 6.0}  # this row, as remembered, turns up again there and would soften deep-hardening steel
 GRAIN_FACTOR = 1.08  # about 8 % of DI a grain-size number; closed form of Grossmann's base-carbon table
 
 
@@ -49,7 +50,7 @@ def a255_ideal_diameter_in(composition, grain_size=7.0):
     Source: ASTM A255 multiplying factors (from memory, checked by the standard's worked example, DI 1.72 in);
         grain size by Grossmann's base-carbon table.
     """
-    g = lambda e: np.asarray(composition.get(e, 0.0), float)  # noqa: E731
+    g = amounts(composition)
     Mn = g("Mn")
     manganese = np.where(Mn <= 1.20, 3.3333 * Mn + 1.0, 5.10 * Mn - 1.12)
     return (

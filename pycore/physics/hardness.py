@@ -3,6 +3,7 @@
 import numpy as np
 
 from pycore.data import columns
+from pycore.physics.composition import amounts
 
 # Hardness of martensite above the Hodge-Orehoski table (0.60 % C): plateau of fully hardened small pieces, the
 # retained austenite counted apart (handbook values for W1, 1095, 52100; from memory).
@@ -101,7 +102,7 @@ def maynier_1978_HV(composition, rate_700_C_per_h):
     Valid: MAYNIER_RANGE. Raises: nothing.
     Source: Maynier, Dollet & Bastien 1978, Hardenability Concepts with Applications to Steel, AIME.
     """
-    g = lambda e: np.asarray(composition.get(e, 0.0), float)  # noqa: E731
+    g = amounts(composition)
     C, Si, Mn, Ni, Cr, Mo, V = (g(e) for e in ("C", "Si", "Mn", "Ni", "Cr", "Mo", "V"))
     rate = np.log10(rate_700_C_per_h)
     martensite = 127 + 949 * C + 27 * Si + 11 * Mn + 8 * Ni + 16 * Cr + 21 * rate

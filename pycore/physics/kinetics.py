@@ -2,6 +2,8 @@
 
 import numpy as np
 
+from pycore.physics.composition import amounts
+
 R_CAL = 1.987  # cal/molK
 KV_RANGE = {"C": (0.1, 0.8), "Mn": (0.0, 2.0), "Si": (0.0, 1.0), "Ni": (0.0, 4.0), "Cr": (0.0, 2.0), "Mo": (0.0, 1.0)}
 EUTECTOID_C_PCT, FERRITE_C_PCT = 0.76, 0.02
@@ -20,7 +22,7 @@ def kirkaldy_venugopalan_1984_Bs_C(composition):
     Valid: KV_RANGE. Raises: nothing.
     Source: Kirkaldy & Venugopalan 1984 (from memory).
     """
-    g = lambda e: np.asarray(composition.get(e, 0.0), float)  # noqa: E731
+    g = amounts(composition)
     return 656 - 57.7 * g("C") - 35 * g("Mn") - 75 * g("Si") - 15.3 * g("Ni") - 34 * g("Cr") - 41.2 * g("Mo")
 
 

@@ -2,6 +2,8 @@
 
 import numpy as np
 
+from pycore.physics.composition import amounts
+
 MS_RANGE = {"C": (0.1, 0.6), "Mn": (0.0, 2.0), "Ni": (0.0, 5.0), "Cr": (0.0, 3.5), "Mo": (0.0, 1.0)}
 VAN_BOHEMEN_RANGE = {
     "C": (0.1, 1.9),
@@ -15,10 +17,6 @@ KM_RATE_PER_K = 0.0110  # Koistinen & Marburger 1959
 STEVEN_HAYNES_MF_OFFSET_K = 215.0  # Steven & Haynes 1956: Mf = Ms - 215 (+-15)
 
 
-def _get(composition, element):
-    return np.asarray(composition.get(element, 0.0), float)
-
-
 def andrews_1965_product_Ms_C(composition):
     """Martensite start by Andrews' product form.
 
@@ -27,7 +25,7 @@ def andrews_1965_product_Ms_C(composition):
     Valid: MS_RANGE; flattens too much above 0.6 % C in solution. Raises: nothing.
     Source: Andrews 1965, JISI 203, 721-727 (from memory).
     """
-    g = lambda e: _get(composition, e)  # noqa: E731
+    g = amounts(composition)
     C = g("C")
     return (
         512
@@ -49,7 +47,7 @@ def van_bohemen_2012_Ms_C(composition):
     Valid: VAN_BOHEMEN_RANGE. Raises: nothing.
     Source: van Bohemen 2012, Mater. Sci. Technol. 28, 487 (from memory).
     """
-    g = lambda e: _get(composition, e)  # noqa: E731
+    g = amounts(composition)
     return (
         565
         - 31 * g("Mn")
@@ -71,7 +69,7 @@ def martensite_start_C(composition):
     Cr steels, so the change-over is not smoothed.
     """
     return np.where(
-        _get(composition, "C") <= 0.6, andrews_1965_product_Ms_C(composition), van_bohemen_2012_Ms_C(composition)
+        amounts(composition)("C") <= 0.6, andrews_1965_product_Ms_C(composition), van_bohemen_2012_Ms_C(composition)
     )
 
 

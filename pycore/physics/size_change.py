@@ -2,6 +2,8 @@
 
 import numpy as np
 
+from pycore.physics.composition import amounts
+
 CEMENTITE_C_PCT = 6.67
 CEMENTITE_PER_STEEL_VOLUME = 7.85 / 7.69  # densities of steel and cementite, so that weight becomes volume
 CRACKS_ABOVE_CEQ = 0.525  # water quench of round bar (Kunitake & Sugisawa; from memory)
@@ -41,5 +43,5 @@ def kunitake_carbon_equivalent(composition):
         condemn oil. Raises: nothing.
     Source: Kunitake & Sugisawa, as given in ASM Handbook 4 (from memory): C + Mn/5 + Mo/5 + Cr/10 + Ni/50.
     """
-    g = lambda e: np.asarray(composition.get(e, 0.0), float)  # noqa: E731
+    g = amounts(composition)
     return g("C") + g("Mn") / 5 + g("Mo") / 5 + g("Cr") / 10 + g("Ni") / 50

@@ -5,6 +5,7 @@ import functools
 import numpy as np
 
 from pycore.data import table
+from pycore.physics.composition import amounts
 
 ZERO_C_IN_K = 273.15
 # HV after 1 h of martensite, least squares on Grange & Baughman 1956 (25 heats; open set Raiipa Technologies,
@@ -81,7 +82,7 @@ def grange_baughman_fit_HV(composition, temperature_C):
     Raises: nothing.
     Source: least squares on Grange & Baughman 1956, Trans. ASM 48 (see GRANGE_BAUGHMAN_FIT).
     """
-    g = lambda e: np.asarray(composition.get(e, 0.0), float)  # noqa: E731
+    g = amounts(composition)
     terms = (1.0, g("C"), g("C") ** 2, g("Mn"), g("Si"), g("Ni"), g("Cr"), g("Mo"), g("V"))
     rows = [sum(c * t for c, t in zip(row[1:], terms)) for row in GRANGE_BAUGHMAN_FIT]
     T = np.asarray(temperature_C, float)

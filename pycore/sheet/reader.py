@@ -88,5 +88,5 @@ class Reader:
     def length(self, path):
         value = self.value(path)
         if is_number(value) and self.plan.get("units") == "in":
-            return self.shown(path, f"{number(value / 25.4, 2 if value >= 2.54 else 3)} in")
+            return self.shown(path, f"{number(round(value / 25.4, 3) or value / 25.4, 2)} in")
         return self.number(path, "mm")

@@ -1,5 +1,16 @@
 """What to do when it comes out soft, hard, bent or cracked."""
 
+from pycore.stages.quench import SURFACE
+from pycore.stages.steps import file_skates
+
+
+def _soft_sign(quenched):
+    """How softness shows after the quench: by the file where it should skate, else by the tester."""
+    found = quenched.structure
+    if found is None or file_skates(found):
+        return "File bites before the temper"
+    return f"Under {found.low[SURFACE]:.0f} HRC before the temper"
+
 
 def faults(job, steel, heat, quenched, temper, aim_HRC):
     """What to do if it comes out soft, hard, bent or cracked."""
@@ -15,9 +26,9 @@ def faults(job, steel, heat, quenched, temper, aim_HRC):
     cooler = "10 °C cooler, " if heat.measured_by == "pyrometer" else "a shade cooler, "
     return (
         {
-            "sign": "File bites before the temper",
+            "sign": _soft_sign(quenched),
             "cause": f"lost skin, too cold, too slow, {slow}",
-            "then": f"Stone deeper and file again. Still soft: {again}; twice at most.",
+            "then": f"Stone deeper and test again. Still soft: {again}; twice at most.",
         },
         {
             "sign": f"Over {aim_HRC[1]:g} HRC after it",

@@ -51,7 +51,7 @@ def proof(job, steel, section, heat, quenched, found, temper, aim_HRC):
         reasons.append(
             f"{quenched.medium_name} leaves the surface at about {surface:.0f} HRC, below the aim of {low:g}–{high:g}."
         )
-        _harder(job, steel, quenched, alternatives)
+        _harder(quenched, alternatives)
     elif not temper.reached:
         verdict = "out-of-reach"
         reasons.append(
@@ -73,7 +73,7 @@ def proof(job, steel, section, heat, quenched, found, temper, aim_HRC):
             f"{final['low']:.0f}–{final['high']:.0f} HRC at the surface."
         )
         if verdict != "reachable":
-            _narrow(job, heat, temper, final, aim_HRC, reasons, alternatives)
+            _narrow(temper, final, aim_HRC, reasons, alternatives)
     if temper.beyond_sheet:
         verdict = "borderline" if verdict == "reachable" else verdict
         low_C, _, high_C, source = steel.temperatures["temper_C"]
@@ -128,7 +128,7 @@ def _gentler(job, steel, quenched, alternatives):
         )
 
 
-def _harder(job, steel, quenched, alternatives):
+def _harder(quenched, alternatives):
     """What would leave it harder: another bath of the shop, agitation, another steel."""
     better = [other for other in quenched.others if other["surface_HRC"] is not None]
     if better:
@@ -177,7 +177,7 @@ def _hotter(temper, final, alternatives):
     )
 
 
-def _narrow(job, heat, temper, final, aim_HRC, reasons, alternatives):
+def _narrow(temper, final, aim_HRC, reasons, alternatives):
     """The aim is met in the middle but the spread is wide: say which error is to blame."""
     low, high = aim_HRC
     reasons.append(

@@ -8,6 +8,7 @@ from pycore import words
 from pycore.data import number
 from pycore.physics import bath as bath_physics
 from pycore.physics import conduction, quench_media, size_change, steel_properties
+from pycore.physics.validity import outside, say
 from pycore.stages import structure
 from pycore.stages.notes import mark, note, rounded
 from pycore.stages.risk import MEANT_FOR, crack_risk, gentleness
@@ -237,6 +238,9 @@ def _result(job, steel, section, heat, results, chosen, rises, needs, working, o
             where = ("surface", "mid-radius", "centre")[int(np.argmax(apart[[SURFACE, MIDRADIUS, CENTRE]]))]
             text = f"the Jominy curve and the kinetics differ by {apart.max():.0f} HRC ({where}): the range is wide, try a coupon"
             marks.append(mark("as_quenched", text))
+    out = outside(steel.austenite, structure.KINETICS_RANGE) if steel.basis == "modelled" else ()
+    if out:
+        marks.append(mark("as_quenched", "outside the range of the kinetics: " + say(out)))
     flash = number(row["flash_C"])
     if kind == "oil" and flash is None:
         marks.append(

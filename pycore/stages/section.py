@@ -61,7 +61,7 @@ def _one_dimension(part, d, length, zone_mm, marks):
             return "slab", length / 2, length, "a disc, cooled from both faces"
         if length < 2 * d["diameter"]:
             marks.append(
-                mark("quench", "short piece: its ends cool too, so the middle hardens a little deeper than told")
+                mark("as_quenched", "short piece: its ends cool too, so the middle hardens a little deeper than told")
             )
         return "cylinder", d["diameter"] / 2, d["diameter"], "a long round bar"
     if shape == "square":
@@ -79,7 +79,7 @@ def _one_dimension(part, d, length, zone_mm, marks):
                 "a solid round: the bore is too small to quench through",
             )
         marks.append(
-            mark("quench", "tube: taken as wetted inside and out; a bath that does not run through hardens less")
+            mark("as_quenched", "tube: taken as wetted inside and out; a bath that does not run through hardens less")
         )
         return "slab", wall / 2, wall, "a wall cooled from both faces"
     if shape == "taper":

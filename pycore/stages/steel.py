@@ -138,6 +138,11 @@ def steel_of(job):
     if "Ms_C" in known:  # measured at the usual heat; the formula carries it to another
         usual_austenite = dict(austenite, C=_dissolved(composition, known, usual, usual))
         Ms = known["Ms_C"][1] + Ms_formula - float(martensite.martensite_start_C(usual_austenite))
+    if "Ms_C" not in known:
+        Ms_range = martensite.MS_RANGE if dissolved <= 0.6 else martensite.VAN_BOHEMEN_RANGE
+        Ms_out = outside(austenite, Ms_range)
+        if Ms_out:
+            marks.append(mark("steel.Ms_C", "outside the range of the formula for Ms: " + say(Ms_out)))
     DI_mm = None
     out = outside(composition, hardenability.A255_RANGE)
     if hyper or basis == "tabulated":
@@ -151,9 +156,7 @@ def steel_of(job):
         HRC = hardenability.a255_jominy_HRC(austenite, JOMINY_STATIONS, grain)
         jominy = {"distance_mm": [rounded(J * 25.4 / 16, 2) for J in JOMINY_STATIONS], "HRC": [rounded(v) for v in HRC]}
     elements = ", ".join(f"{e} {composition[e]:g}" for e in sorted(composition, key=lambda e: (e != "C", e)))
-    _notes(
-        why, known, composition, elements, composition_note, grain, temperature, dissolved, hyper, bool(out), Ac3, Acm
-    )
+    _notes(why, known, composition, elements, composition_note, grain, temperature, hyper, bool(out), Ac3, Acm)
     return Steel(
         job.grade,
         name,
@@ -204,7 +207,7 @@ def _hardening_of(composition):
     return "water" if DI < 1.4 else "oil" if DI < 8 else "air"
 
 
-def _notes(why, known, composition, elements, composition_note, grain, temperature, dissolved, hyper, out, Ac3, Acm):
+def _notes(why, known, composition, elements, composition_note, grain, temperature, hyper, out, Ac3, Acm):
     andrews_out = outside(composition, critical.ANDREWS_RANGE)
 
     def entry(key, name, quantity, model, source, valid):

@@ -8,6 +8,8 @@ from pycore.physics import hardenability, hardness, kinetics, martensite
 from pycore.physics.validity import outside
 from pycore.stages.notes import rounded
 
+# Carbon in solution to 0.9 %: the W-type heats on which carbide_nucleation was set stand that far out.
+KINETICS_RANGE = {**kinetics.KV_RANGE, "C": (0.1, 0.9)}
 PHASES = ("ferrite", "pearlite", "bainite", "martensite", "retained_austenite")
 RATE_CHECK_C = 704.0  # 1300 °F, where the Jominy scale is told
 RATE_END_C = 500.0

@@ -172,12 +172,12 @@ def temper(job, steel, section, quenched, found, aim_HRC):
     if job.temper.kind in ("torch", "residual-heat"):
         marks.append(mark("temper.heat_up_min", "the colour tells when it is there"))
     else:
-        heat_up = _heat_up_min(job, section, chosen, oven)
+        heat_up = _heat_up_min(section, chosen, oven)
     final, arrays = _final(response, found, chosen, total_h, accuracy)
     if found is not None and found.HRC[SURFACE] < low:
         marks.append(mark("temper.temperature_C", "the quench leaves it below the aim: no temper can raise it"))
     steel_set = "stainless" if steel.composition.get("Cr", 0) > 10 else "carbon"
-    why = _why(steel, response, job, oven, section, hold_min, cycles, accuracy, found)
+    why = _why(steel, response, oven, section, hold_min, cycles, accuracy, found)
     tensile = _tensile(final)
     return Temper(
         job.temper.kind,
@@ -253,7 +253,7 @@ def _longer(response, found, hottest, high, cycles):
     return None
 
 
-def _heat_up_min(job, section, target_C, oven):
+def _heat_up_min(section, target_C, oven):
     convection, emissivity = number(oven["convection_W_m2K"]), number(oven["emissivity"])
 
     def boundary(surface_C, time_s):
@@ -299,7 +299,7 @@ def _tensile(final):
     return None if strength != strength else float(nearest(strength, 10))
 
 
-def _why(steel, response, job, oven, section, hold_min, cycles, accuracy, found):
+def _why(steel, response, oven, section, hold_min, cycles, accuracy, found):
     if response.fit:
         model = "regression of tempered martensite on composition, with Hollomon-Jaffe for time"
     else:
